@@ -1,0 +1,10 @@
+using BenchmarkDotNet.Running;
+
+// Without a known first argument the BenchmarkDotNet classes are offered; with one, a table of the project is printed.
+string command = args.Length > 0 ? args[0] : "";
+switch (command)
+{
+    default:
+        BenchmarkSwitcher.FromAssembly(typeof(Program).Assembly).Run(args);
+        return 0;
+}

@@ -1,0 +1,71 @@
+using Smoothing.Kernels;
+using Smoothing.Numerics;
+using Smoothing.Samples;
+
+namespace Smoothing.Estimation;
+
+/// <summary>A kernel density estimate f̂(x) = (1/(Σw h)) Σ wᵢ K((x − Xᵢ)/h) and what is read off it.</summary>
+/// <remarks>Immutable and safe to share between threads.</remarks>
+public sealed partial class Density
+{
+    private readonly KernelSums _sums;
+
+    private Density(Sample sample, Kernel kernel, double bandwidth, DensityOptions options, KernelSums sums)
+    {
+        Sample = sample;
+        Kernel = kernel;
+        Bandwidth = bandwidth;
+        Options = options;
+        _sums = sums;
+    }
+
+    /// <summary>The sample that was smoothed.</summary>
+    public Sample Sample { get; }
+
+    /// <summary>The kernel.</summary>
+    public Kernel Kernel { get; }
+
+    /// <summary>The bandwidth h: the scale of the kernel as written, in the unit of the data.</summary>
+    public double Bandwidth { get; }
+
+    /// <summary>The options in force.</summary>
+    public DensityOptions Options { get; }
+
+    /// <summary>Smooths a sample.</summary>
+    /// <param name="sample">The values, with weights if any.</param>
+    /// <param name="kernel">The kernel K.</param>
+    /// <param name="bandwidth">h, positive and finite, in the unit of the data.</param>
+    /// <param name="options">Known limits and the like; null for the defaults.</param>
+    /// <returns>The estimate.</returns>
+    /// <exception cref="ArgumentOutOfRangeException"><paramref name="bandwidth"/> is not positive and finite.</exception>
+    public static Density Of(Sample sample, Kernel kernel, double bandwidth, DensityOptions? options = null)
+    {
+        Guard.Given(sample);
+        Guard.Given(kernel);
+        Guard.Positive(bandwidth, "choose one with BandwidthRules, or pass a width in the unit of the data");
+        return new Density(sample, kernel, bandwidth, options ?? new DensityOptions(), new DirectSums(sample, kernel, bandwidth));
+    }
+
+    /// <summary>f̂ at one point; 0 at ±∞.</summary>
+    /// <param name="x">Where, in the unit of the data.</param>
+    /// <returns>The density, in 1/unit.</returns>
+    /// <exception cref="ArgumentOutOfRangeException"><paramref name="x"/> is NaN.</exception>
+    public double Value(double x)
+    {
+        Guard.Number(x);
+        double result = 0;
+        Values(new ReadOnlySpan<double>(in x), new Span<double>(ref result));
+        return result;
+    }
+
+    /// <summary>f̂ at many points, in any order.</summary>
+    /// <param name="x">Where, in the unit of the data; ±∞ allowed.</param>
+    /// <param name="destination">Receives one density per point; at least as long as <paramref name="x"/>.</param>
+    /// <exception cref="ArgumentException">A point is NaN, or <paramref name="destination"/> is too short.</exception>
+    public void Values(ReadOnlySpan<double> x, Span<double> destination)
+    {
+        Guard.Numbers(x, nameof(x));
+        Guard.Destination(x.Length, destination.Length);
+        _sums.Derivatives(x, 0, destination);
+    }
+}
