@@ -1,0 +1,113 @@
+using Smoothing.Estimation;
+using Smoothing.Kernels;
+using Smoothing.Numerics;
+
+namespace Smoothing.Bandwidths;
+
+/// <summary>From a rule's name to its finding, and from the finding to the public choice: stand-ins, floor, kernel, derivative, unit.</summary>
+internal static partial class RuleDispatch
+{
+    public static BandwidthChoice Choose(BandwidthRule rule, SelectionInput input, Kernel kernel)
+    {
+        Guard.Given(kernel);
+        return Finish(Find(rule, input, kernel), input, kernel);
+    }
+
+    private static RuleOutcome Find(BandwidthRule rule, SelectionInput input, Kernel kernel)
+    {
+        double spread = input.ScaleFor(input.Options.Scale);
+        switch (rule)
+        {
+            case BandwidthRule.NormalReference:
+                return new RuleOutcome(rule, NormalReferenceRule.Bandwidth(kernel, input.Options.Derivative, spread, input.N), BandwidthStatus.Formula) { Scale = spread };
+            case BandwidthRule.Oversmoothed:
+                BandwidthChecks.SecondOrder(kernel, rule);
+                return new RuleOutcome(rule, OversmoothedRule.Bandwidth(Kernel.Gaussian, input.Deviation, input.N), BandwidthStatus.Formula) { Scale = input.Deviation };
+            case BandwidthRule.SheatherJones:
+                BandwidthChecks.SecondOrder(kernel, rule);
+                return WithStandIn(SheatherJonesRule.Find(input), input);
+            case BandwidthRule.DiffusionFixedPoint:
+                BandwidthChecks.SecondOrder(kernel, rule);
+                return WithStandIn(DiffusionFixedPointRule.Find(input), input);
+            case BandwidthRule.Automatic:
+                BandwidthChecks.SecondOrder(kernel, rule);
+                return WithStandIn(AutomaticRule.Find(input), input);
+            default:
+                throw new ArgumentOutOfRangeException(nameof(rule), Guard.Text($"rule must be one of the named rules, but is {rule}."));
+        }
+    }
+
+    /// <summary>Sheather–Jones for a missing fixed point, the normal reference for anything else that is missing.</summary>
+    private static RuleOutcome WithStandIn(RuleOutcome outcome, SelectionInput input)
+    {
+        if (double.IsFinite(outcome.Value) && outcome.Value > 0)
+        {
+            return outcome;
+        }
+
+        if (outcome.Rule == BandwidthRule.DiffusionFixedPoint && SheatherJonesRule.Find(input) is { Value: > 0 } plugIn && double.IsFinite(plugIn.Value))
+        {
+            return outcome with
+            {
+                Value = plugIn.Value,
+                Status = BandwidthStatus.Replaced,
+                ReplacedBy = plugIn.Rule,
+                Notes = [.. outcome.Notes, "The fixed point has no crossing from − to + in the bracket; Sheather–Jones stands in."],
+            };
+        }
+
+        double spread = input.ScaleFor(BandwidthScale.Robust);
+        return outcome with
+        {
+            Value = NormalReferenceRule.Bandwidth(Kernel.Gaussian, 0, spread, input.N),
+            Scale = spread,
+            Status = BandwidthStatus.Replaced,
+            ReplacedBy = BandwidthRule.NormalReference,
+            Notes = [.. outcome.Notes, Guard.Text($"{outcome.Rule} found nothing in its bracket; the normal reference stands in.")],
+        };
+    }
+
+    /// <summary>Whether the finding already belongs to the kernel asked for; else it is for the Gaussian and the density.</summary>
+    private static bool IsExact(BandwidthRule rule) => rule is BandwidthRule.NormalReference;
+
+    private static BandwidthChoice Finish(RuleOutcome outcome, SelectionInput input, Kernel kernel)
+    {
+        int r = input.Options.Derivative;
+        double factor = IsExact(outcome.Rule) ? 1 : KernelFactors.FromGaussian(kernel, r) * (r == 0 ? 1 : KernelFactors.FromDensity(r, input.N));
+        double floor = input.Floor * (kernel.Order == 2 ? KernelFactors.FromGaussian(kernel, 0) : kernel.CanonicalBandwidth / Kernel.Gaussian.CanonicalBandwidth);
+        double scaled = factor * input.Unit;
+        double value = outcome.Value * factor;
+        var notes = new List<string>(input.Notes);
+        notes.AddRange(outcome.Notes);
+        BandwidthStatus status = outcome.Status;
+        if (!(value >= floor))
+        {
+            value = floor;
+            status = BandwidthStatus.RoundingFloor;
+            notes.Add(Guard.Text($"Rounding limits the resolution: the rule asks for less than half the rounding step of {input.RoundingUnit * input.Unit:G6}."));
+        }
+
+        double[] candidates = [.. outcome.Candidates.Select(c => c.Value)];
+        bool disagree = candidates.Length > 1 && candidates.Max() > AutomaticRule.Disagreement * candidates.Min();
+        if (disagree)
+        {
+            notes.Add("The candidates differ by more than 1.5 times: structure on several scales is likely.");
+        }
+
+        return new BandwidthChoice(value * input.Unit, outcome.Rule, status, kernel)
+        {
+            ReplacedBy = outcome.ReplacedBy,
+            EffectiveCount = input.N,
+            Scale = (double.IsNaN(outcome.Scale) ? input.ScaleFor(input.Options.Scale) : outcome.Scale) * input.Unit,
+            TiedShare = input.TiedShare,
+            LatticeStep = input.LatticeStep > 0 ? input.LatticeStep * input.Unit : null,
+            Floor = floor * input.Unit,
+            Roots = Array.AsReadOnly([.. outcome.Roots.Select(h => h * scaled)]),
+            Minima = Array.AsReadOnly([.. outcome.Minima.Select(h => h * scaled)]),
+            Candidates = outcome.Candidates.ToDictionary(c => c.Rule, c => c.Value * scaled),
+            CandidatesDisagree = disagree,
+            Objective = outcome.Objective is (double[] h, double[] score) ? new Curve(Array.ConvertAll(h, x => x * scaled), score) : null,
+            Notes = notes.AsReadOnly(),
+        };
+    }
+}
