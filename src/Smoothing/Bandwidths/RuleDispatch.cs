@@ -13,13 +13,16 @@ internal static partial class RuleDispatch
         return Finish(Find(rule, input, kernel), input, kernel);
     }
 
-    private static RuleOutcome Find(BandwidthRule rule, SelectionInput input, Kernel kernel)
+    /// <summary>The bandwidth for the smoothed distribution function.</summary>
+    public static BandwidthChoice ForDistribution(SelectionInput input, Kernel kernel) => Finish(DistributionRule.Find(input, Guard.Given(kernel)), input, kernel);
+
+    internal static RuleOutcome Find(BandwidthRule rule, SelectionInput input, Kernel kernel)
     {
         double spread = input.ScaleFor(input.Options.Scale);
         switch (rule)
         {
             case BandwidthRule.NormalReference:
-                return new RuleOutcome(rule, NormalReferenceRule.Bandwidth(kernel, input.Options.Derivative, spread, input.N), BandwidthStatus.Formula) { Scale = spread };
+                return new RuleOutcome(rule, NormalReferenceRule.Bandwidth(kernel, input.Options.Derivative, spread, input.N), BandwidthStatus.Formula) { Scale = spread, IsExact = true };
             case BandwidthRule.Oversmoothed:
                 BandwidthChecks.SecondOrder(kernel, rule);
                 return new RuleOutcome(rule, OversmoothedRule.Bandwidth(Kernel.Gaussian, input.Deviation, input.N), BandwidthStatus.Formula) { Scale = input.Deviation };
@@ -32,12 +35,27 @@ internal static partial class RuleDispatch
             case BandwidthRule.Automatic:
                 BandwidthChecks.SecondOrder(kernel, rule);
                 return WithStandIn(AutomaticRule.Find(input), input);
+            case BandwidthRule.DirectPlugIn:
+                return DirectPlugInRule.Find(input, kernel);
+            case BandwidthRule.BlockSpectrum:
+                return BlockSpectrumRule.Find(input, kernel);
+            case BandwidthRule.LeastSquaresCrossValidation:
+                return WithStandIn(LeastSquaresRule.Find(input, kernel), input);
+            case BandwidthRule.BiasedCrossValidation:
+                BandwidthChecks.SecondOrder(kernel, rule);
+                return WithStandIn(BiasedCrossValidationRule.Find(input), input);
+            case BandwidthRule.OneSidedCrossValidation:
+                BandwidthChecks.SecondOrder(kernel, rule);
+                return WithStandIn(OneSidedRule.Find(input), input);
+            case BandwidthRule.LikelihoodCrossValidation:
+                BandwidthChecks.SecondOrder(kernel, rule);
+                return WithStandIn(LikelihoodRule.Find(input), input);
             default:
                 throw new ArgumentOutOfRangeException(nameof(rule), Guard.Text($"rule must be one of the named rules, but is {rule}."));
         }
     }
 
-    /// <summary>Sheather–Jones for a missing fixed point, the normal reference for anything else that is missing.</summary>
+    /// <summary>Sheather–Jones for whatever is missing, the normal reference where that is missing too.</summary>
     private static RuleOutcome WithStandIn(RuleOutcome outcome, SelectionInput input)
     {
         if (double.IsFinite(outcome.Value) && outcome.Value > 0)
@@ -45,14 +63,14 @@ internal static partial class RuleDispatch
             return outcome;
         }
 
-        if (outcome.Rule == BandwidthRule.DiffusionFixedPoint && SheatherJonesRule.Find(input) is { Value: > 0 } plugIn && double.IsFinite(plugIn.Value))
+        if (outcome.Rule is not (BandwidthRule.SheatherJones or BandwidthRule.Automatic) && SheatherJonesRule.Find(input) is { Value: > 0 } plugIn && double.IsFinite(plugIn.Value))
         {
             return outcome with
             {
                 Value = plugIn.Value,
                 Status = BandwidthStatus.Replaced,
                 ReplacedBy = plugIn.Rule,
-                Notes = [.. outcome.Notes, "The fixed point has no crossing from − to + in the bracket; Sheather–Jones stands in."],
+                Notes = [.. outcome.Notes, Guard.Text($"{outcome.Rule} found nothing in its bracket; Sheather–Jones stands in.")],
             };
         }
 
@@ -67,13 +85,10 @@ internal static partial class RuleDispatch
         };
     }
 
-    /// <summary>Whether the finding already belongs to the kernel asked for; else it is for the Gaussian and the density.</summary>
-    private static bool IsExact(BandwidthRule rule) => rule is BandwidthRule.NormalReference;
-
     private static BandwidthChoice Finish(RuleOutcome outcome, SelectionInput input, Kernel kernel)
     {
         int r = input.Options.Derivative;
-        double factor = IsExact(outcome.Rule) ? 1 : KernelFactors.FromGaussian(kernel, r) * (r == 0 ? 1 : KernelFactors.FromDensity(r, input.N));
+        double factor = outcome.IsExact ? 1 : KernelFactors.FromGaussian(kernel, r) * (r == 0 ? 1 : KernelFactors.FromDensity(r, input.N));
         double floor = input.Floor * (kernel.Order == 2 ? KernelFactors.FromGaussian(kernel, 0) : kernel.CanonicalBandwidth / Kernel.Gaussian.CanonicalBandwidth);
         double scaled = factor * input.Unit;
         double value = outcome.Value * factor;

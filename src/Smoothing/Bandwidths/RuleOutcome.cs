@@ -5,6 +5,9 @@ internal sealed record RuleOutcome(BandwidthRule Rule, double Value, BandwidthSt
 {
     public BandwidthRule? ReplacedBy { get; init; }
 
+    /// <summary>Whether the numbers already belong to the kernel and derivative asked for; else to the Gaussian and the density.</summary>
+    public bool IsExact { get; init; }
+
     public double Scale { get; init; } = double.NaN;
 
     public IReadOnlyList<double> Roots { get; init; } = [];

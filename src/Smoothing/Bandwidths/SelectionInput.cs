@@ -18,6 +18,7 @@ internal sealed partial class SelectionInput
 
     private EmpiricalSpectrum? _spectrum;
     private double[]? _squared;
+    private double[]? _pairs;
 
     private SelectionInput(double[] values, double[] masses, double effectiveCount, double deviation, double interquartileRange, BandwidthOptions options)
     {
@@ -88,6 +89,12 @@ internal sealed partial class SelectionInput
     /// <summary>|φ_n|² as the rules see it: cut at π/step and freed of the rounding cell's damping.</summary>
     public ReadOnlySpan<double> Squared => _squared ??= BuildSquared();
 
+    /// <summary>The part of |φ_n|² that pairs of two different observations make, as their mean: (|φ_n|² − 1/n)/(1 − 1/n).</summary>
+    public ReadOnlySpan<double> Pairs => _pairs ??= BuildPairs();
+
+    /// <summary>Mass of one observation of each distinct value.</summary>
+    public double[] OwnMasses { get; private init; } = [];
+
     /// <summary>The measure of spread that the options ask for.</summary>
     public double ScaleFor(BandwidthScale scale) => scale switch
     {
@@ -104,15 +111,29 @@ internal sealed partial class SelectionInput
     public double Roughness(int derivative, double g) => Reflection * Spectrum.GaussianIntegral(Squared, 0, derivative, g);
 
     /// <summary>The same as the mean over pairs of two different observations.</summary>
-    public double RoughnessWithoutOwn(int derivative, double g) =>
-        Reflection * Spectrum.GaussianIntegral(Squared, 1 / N, derivative, g) / (1 - (1 / N));
+    public double RoughnessWithoutOwn(int derivative, double g) => Reflection * Spectrum.GaussianIntegral(Pairs, 0, derivative, g);
 
     private EmpiricalSpectrum BuildSpectrum()
     {
         double smallest = Math.Max(Options.SmallestBandwidth / Unit ?? Largest / SearchRatio, Floor);
         return Circle > 0
-            ? EmpiricalSpectrum.OnCircle(Values, Masses, N, Values[0], Circle, smallest)
+            ? EmpiricalSpectrum.OnCircle(Values, Masses, N, -0.5 * Circle, Circle, smallest)
             : EmpiricalSpectrum.Of(Values, Masses, N, smallest, Largest);
+    }
+
+    private double[] BuildPairs()
+    {
+        ReadOnlySpan<double> raw = Spectrum.SquaredModulus, real = Spectrum.Real;
+        var pairs = new double[Squared.Length];
+        for (int k = 0; k < pairs.Length; k++)
+        {
+            // On a reflected sample an observation meets itself twice, directly and in its mirror image: the mean of cos²(t x)/n.
+            // The limit lies half a circle from the origin, so φ of the reflected sample at t_2k is (−1)^2k times the real part there.
+            double own = !HasLimits ? 1 / N : (1 + (2 * k < real.Length ? real[2 * k] : 0)) / (2 * N);
+            pairs[k] = (raw[k] - own) / (1 - (1 / N));
+        }
+
+        return pairs;
     }
 
     private double[] BuildSquared()

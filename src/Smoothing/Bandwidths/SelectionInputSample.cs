@@ -15,15 +15,17 @@ internal sealed partial class SelectionInput
         ReadOnlySpan<double> w = sample.SortedWeights;
         var values = new List<double>(x.Length);
         var masses = new List<double>(x.Length);
+        var owns = new List<double>(x.Length);
         double tied = 0;
         for (int i = 0; i < x.Length;)
         {
-            double mass = 0, largest = 0;
+            double mass = 0, largest = 0, squares = 0;
             int j = i;
             for (; j < x.Length && x[j] == x[i]; j++)
             {
                 double own = w.IsEmpty ? 1 : w[j];
                 mass += own;
+                squares += own * own;
                 largest = Math.Max(largest, own);
             }
 
@@ -31,7 +33,9 @@ internal sealed partial class SelectionInput
             {
                 values.Add(x[i]);
                 masses.Add(mass / sample.TotalWeight);
-                bool shared = sample.WeightMeaning == WeightMeaning.Counts && sample.IsWeighted ? mass > 1 : mass > largest;
+                bool counts = sample.IsWeighted && sample.WeightMeaning == WeightMeaning.Counts;
+                owns.Add((counts ? 1 : squares / mass) / sample.TotalWeight);
+                bool shared = mass > (counts ? 1 : largest);
                 tied += shared ? mass / sample.TotalWeight : 0;
             }
 
@@ -47,7 +51,7 @@ internal sealed partial class SelectionInput
             deviation = ScaledDeviation(values, masses, sample.EffectiveCount);
         }
 
-        return Make([.. values], [.. masses], sample.EffectiveCount, deviation, sample.InterquartileRange, tied, step, step, options);
+        return Make([.. values], [.. masses], [.. owns], sample.EffectiveCount, deviation, sample.InterquartileRange, tied, step, step, options);
     }
 
     private static double ScaledDeviation(List<double> values, List<double> masses, double n)
@@ -65,7 +69,7 @@ internal sealed partial class SelectionInput
     }
 
     private static SelectionInput Make(
-        double[] values, double[] masses, double n, double deviation, double quartiles, double tied, double rounding, double lattice, BandwidthOptions options)
+        double[] values, double[] masses, double[] owns, double n, double deviation, double quartiles, double tied, double rounding, double lattice, BandwidthOptions options)
     {
         double unit = quartiles > 0 ? Math.Min(deviation, quartiles) : deviation;
         // A scale of rules, not of results: its power of two keeps the division exact.
@@ -74,16 +78,17 @@ internal sealed partial class SelectionInput
         Interval support = options.Support ?? Interval.WholeLine;
         bool lower = double.IsFinite(support.Lower), upper = double.IsFinite(support.Upper);
         BandwidthChecks.Inside(values, support);
-        (double[] v, double[] m) = lower || upper
-            ? Reflect(values, masses, lower ? support.Lower : support.Upper, unit, lower)
-            : (Array.ConvertAll(values, x => (x - centre) / unit), masses);
+        bool mirrored = lower || upper;
+        double limit = lower ? support.Lower : support.Upper;
+        (double[] v, double[] m) = mirrored ? Reflect(values, masses, limit, unit, lower) : (Array.ConvertAll(values, x => (x - centre) / unit), masses);
         return new SelectionInput(v, m, n, deviation / unit, quartiles / unit, options)
         {
             Unit = unit,
+            OwnMasses = mirrored ? Reflect(values, owns, limit, unit, lower).Masses : owns,
             TiedShare = tied,
             RoundingUnit = rounding / unit,
             LatticeStep = lattice / unit,
-            Reflection = lower || upper ? 2 : 1,
+            Reflection = mirrored ? 2 : 1,
             Circle = lower && upper ? 2 * support.Length / unit : 0,
         };
     }

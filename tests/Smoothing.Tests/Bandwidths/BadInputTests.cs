@@ -8,7 +8,7 @@ namespace Smoothing.Tests.Bandwidths;
 /// <summary>Every rule on data that no rule was made for: a finite bandwidth above zero and an honest status, or a clear error. Cases invented here.</summary>
 public class BadInputTests
 {
-    public static TheoryData<BandwidthRule> Rules => [BandwidthRule.Automatic, BandwidthRule.NormalReference, BandwidthRule.Oversmoothed, BandwidthRule.SheatherJones, BandwidthRule.DiffusionFixedPoint];
+    public static TheoryData<BandwidthRule> Rules => [.. Enum.GetValues<BandwidthRule>()];
 
     [Theory]
     [MemberData(nameof(Rules))]
