@@ -9,18 +9,21 @@ namespace Smoothing.Estimation;
 public sealed partial class Density
 {
     private readonly KernelSums _sums;
+    private readonly CurveForm _form;
+    private double[]? _signChanges;
 
-    private Density(Sample sample, Kernel kernel, double bandwidth, DensityOptions options, KernelSums sums)
+    private Density(Sample? sample, Kernel kernel, double bandwidth, DensityOptions options, KernelSums sums, CurveForm form)
     {
         Sample = sample;
         Kernel = kernel;
         Bandwidth = bandwidth;
         Options = options;
         _sums = sums;
+        _form = form;
     }
 
-    /// <summary>The sample that was smoothed.</summary>
-    public Sample Sample { get; }
+    /// <summary>The sample that was smoothed; null when only its condensed form was given.</summary>
+    public Sample? Sample { get; }
 
     /// <summary>The kernel.</summary>
     public Kernel Kernel { get; }
@@ -43,7 +46,9 @@ public sealed partial class Density
         Guard.Given(sample);
         Guard.Given(kernel);
         Guard.Positive(bandwidth, "choose one with BandwidthRules, or pass a width in the unit of the data");
-        return new Density(sample, kernel, bandwidth, options ?? new DensityOptions(), new DirectSums(sample, kernel, bandwidth));
+        var sums = new DirectSums(sample, kernel, bandwidth);
+        var form = new LineForm(sums, kernel, bandwidth, new Interval(sample.Minimum, sample.Maximum), new SmoothedDraws(sample, kernel, bandwidth));
+        return new Density(sample, kernel, bandwidth, options ?? new DensityOptions(), sums, form);
     }
 
     /// <summary>f̂ at one point; 0 at ±∞.</summary>
@@ -66,6 +71,15 @@ public sealed partial class Density
     {
         Guard.Numbers(x, nameof(x));
         Guard.Destination(x.Length, destination.Length);
-        _sums.Derivatives(x, 0, destination);
+        _form.Derivatives(x, 0, destination);
     }
+
+    /// <summary>The sums behind the estimate, without any mending at limits: for what is derived from them elsewhere.</summary>
+    internal KernelSums Sums => _sums;
+
+    /// <summary>Whether the curve is the plain kernel sum on the whole line, so that the sums alone describe it.</summary>
+    internal bool IsPlain => _form is LineForm;
+
+    /// <summary>The closed range outside which the curve is 0; ends may be infinite.</summary>
+    internal Interval Ends => _form.Ends;
 }

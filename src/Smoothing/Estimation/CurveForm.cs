@@ -1,0 +1,52 @@
+using Smoothing.Numerics;
+
+namespace Smoothing.Estimation;
+
+/// <summary>What an estimate is made of once limits, negative parts and the like are taken care of: value, derivatives and both tails of one curve of mass 1.</summary>
+/// <remarks>Arguments are checked by <see cref="Density"/>; x holds no NaN. Forms are immutable once built, or guard their lazy parts.</remarks>
+internal abstract class CurveForm
+{
+    /// <summary>The closed range outside which the curve is 0; ends may be infinite.</summary>
+    public abstract Interval Ends { get; }
+
+    /// <summary>A finite range that holds the bulk of the curve: where searches start.</summary>
+    public abstract Interval Core { get; }
+
+    /// <summary>The length on which the curve can change: the bandwidth, in the unit of the data.</summary>
+    public abstract double Scale { get; }
+
+    /// <summary>Whether the curve may fall below 0, so that its distribution function can dip.</summary>
+    public abstract bool MayBeNegative { get; }
+
+    /// <summary>destination[j] = f⁽ʳ⁾(x_j).</summary>
+    public abstract void Derivatives(ReadOnlySpan<double> x, int order, Span<double> destination);
+
+    /// <summary>destination[j] = ∫ f up to x_j, or from there on when <paramref name="upper"/>.</summary>
+    public abstract void Cumulatives(ReadOnlySpan<double> x, bool upper, Span<double> destination);
+
+    /// <summary>Fills the destination with independent draws; false when the form has no recipe of its own and must be inverted.</summary>
+    public virtual bool TryDraw(ref RandomStream random, Span<double> destination) => false;
+
+    public double Derivative(double x, int order)
+    {
+        double result = 0;
+        Derivatives(new ReadOnlySpan<double>(in x), order, new Span<double>(ref result));
+        return result;
+    }
+
+    public double Value(double x) => Derivative(x, 0);
+
+    public double Tail(double x, bool upper)
+    {
+        double result = 0;
+        Cumulatives(new ReadOnlySpan<double>(in x), upper, new Span<double>(ref result));
+        return result;
+    }
+
+    /// <summary>∫ f over [from, to], taken on the side where less cancels.</summary>
+    public double Mass(double from, double to)
+    {
+        double below = Tail(from, upper: false);
+        return below > 0.5 ? Tail(from, upper: true) - Tail(to, upper: true) : Tail(to, upper: false) - below;
+    }
+}

@@ -1,0 +1,42 @@
+using Smoothing.Numerics;
+
+namespace Smoothing.Estimation;
+
+/// <content>Quantiles.</content>
+public sealed partial class Density
+{
+    /// <summary>The p-quantile of the curve, inf{x : F̂(x) ≥ p}.</summary>
+    /// <remarks>
+    /// p = 0 and p = 1 give the ends of the curve: the declared limits, the outermost value moved out by h times the support radius, or ±∞. Exact
+    /// inverse of <see cref="Cumulative"/> up to the rounding of F̂ divided by f̂; where F̂ is flat at p, the left end of the flat stretch. Where a
+    /// kernel of order above 2 makes F̂ dip, the first place where p is reached. A quantile beyond the bulk of the data describes the kernel's tail,
+    /// not the quantity's: for far quantiles read the order statistics too.
+    /// </remarks>
+    /// <param name="probability">p in [0, 1].</param>
+    /// <returns>A place, in the unit of the data.</returns>
+    /// <exception cref="ArgumentOutOfRangeException"><paramref name="probability"/> is outside [0, 1] or NaN.</exception>
+    public double Quantile(double probability)
+    {
+        Guard.Probability(probability);
+        return probability == 0 ? _form.Ends.Lower
+            : probability == 1 ? _form.Ends.Upper
+            : probability <= 0.5 ? QuantileSearch.Find(_form, probability, upper: false, SignChanges)
+            : QuantileSearch.Find(_form, 1 - probability, upper: true, SignChanges);
+    }
+
+    /// <summary>The place above which the share <paramref name="tail"/> lies, inf{x : 1 − F̂(x) ≤ tail}: accurate in the far upper tail, where 1 − p would lose digits.</summary>
+    /// <param name="tail">1 − p in [0, 1]; 0 gives the upper end of the curve, 1 the lower end.</param>
+    /// <returns>A place, in the unit of the data.</returns>
+    /// <exception cref="ArgumentOutOfRangeException"><paramref name="tail"/> is outside [0, 1] or NaN.</exception>
+    public double UpperQuantile(double tail)
+    {
+        Guard.Probability(tail);
+        return tail == 0 ? _form.Ends.Upper
+            : tail == 1 ? _form.Ends.Lower
+            : tail <= 0.5 ? QuantileSearch.Find(_form, tail, upper: true, SignChanges)
+            : QuantileSearch.Find(_form, 1 - tail, upper: false, SignChanges);
+    }
+
+    // Where the curve crosses zero; none for kernels that are nowhere negative. Found once, on first need.
+    private IReadOnlyList<double> SignChanges => _form.MayBeNegative ? (_signChanges ??= Estimation.SignChanges.Of(_form)) : [];
+}
