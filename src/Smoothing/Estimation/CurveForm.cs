@@ -27,6 +27,16 @@ internal abstract class CurveForm
     /// <summary>Fills the destination with independent draws; false when the form has no recipe of its own and must be inverted.</summary>
     public virtual bool TryDraw(ref RandomStream random, Span<double> destination) => false;
 
+    /// <summary>The values behind the curve, smallest first, where they are known: they tell the occupied range from gaps, and where kinks are.</summary>
+    protected virtual ReadOnlySpan<double> SortedValues => default;
+
+    /// <summary>Kinks of the kernel's derivatives, as distances from its centre in the unit of the data.</summary>
+    protected virtual IReadOnlyList<double> Kinks => [];
+
+    /// <summary>Points, increasing, between which the curve changes little: where searches for turning points look.</summary>
+    /// <param name="smoothness">How far the chain of derivatives goes; kernels with a short one get their kinks as well.</param>
+    public virtual double[] Grid(int smoothness) => CurveGrid.Of(Ends, Core, Scale, SortedValues, smoothness <= 2 ? Kinks : []);
+
     public double Derivative(double x, int order)
     {
         double result = 0;

@@ -23,6 +23,10 @@ internal sealed class LineForm(KernelSums sums, Kernel kernel, double bandwidth,
 
     public override bool MayBeNegative => kernel.Order > 2;
 
+    protected override ReadOnlySpan<double> SortedValues => draws is null ? default : draws.Sample.SortedValues;
+
+    protected override IReadOnlyList<double> Kinks => double.IsInfinity(_reach) ? [0] : [-_reach, 0, _reach];
+
     public override void Derivatives(ReadOnlySpan<double> x, int order, Span<double> destination) => sums.Derivatives(x, order, destination);
 
     public override void Cumulatives(ReadOnlySpan<double> x, bool upper, Span<double> destination) => sums.Cumulatives(x, upper, destination);
