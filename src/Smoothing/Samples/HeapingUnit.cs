@@ -15,6 +15,6 @@ public sealed record HeapingUnit
     /// <summary>Share that the places beside the multiples lead one to expect on them, in [0, 1].</summary>
     public double ExpectedShare { get; }
 
-    /// <summary><see cref="Share"/> − <see cref="ExpectedShare"/>: the part of the values that was probably moved to a multiple.</summary>
+    /// <summary><see cref="Share"/> − <see cref="ExpectedShare"/>: the part of the values that was probably rounded to this step rather than to the rounding unit.</summary>
     public double Excess => Share - ExpectedShare;
 }

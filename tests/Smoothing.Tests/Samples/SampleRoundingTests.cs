@@ -114,8 +114,9 @@ public class SampleRoundingTests
         Assert.Equal(1, sample.RoundingUnit!.Step);
         Assert.Equal(5, sample.HeapingUnit!.Step);
 
-        // A quarter was rounded to 5, of which a fifth sat there already: 0.2 moved; binomial standard error √(0.2·0.8/1200) = 0.012, four of them.
-        Near.Absolute(0.2, sample.HeapingUnit.Excess, 0.046);
+        // A quarter was rounded to 5: 0.25 + 0.75/5 = 0.4 lies there, 0.15 a place beside. The excess is the share on it times 5/4, less 1/4:
+        // standard error 1.25·√(0.4·0.6/1200) = 0.018, four of them.
+        Near.Absolute(0.25, sample.HeapingUnit.Excess, 0.072);
         Assert.Null(Sample.Of(values).HeapingUnit);
     }
 

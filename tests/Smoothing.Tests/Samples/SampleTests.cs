@@ -4,6 +4,7 @@ using FsCheck.Xunit;
 using MathNet.Numerics.Statistics;
 using Smoothing.Samples;
 using Smoothing.Tests.Support;
+using TestData = Smoothing.Tests.Support.TestData;
 
 namespace Smoothing.Tests.Samples;
 
