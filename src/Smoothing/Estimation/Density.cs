@@ -46,7 +46,7 @@ public sealed partial class Density
         Guard.Given(sample);
         Guard.Given(kernel);
         Guard.Positive(bandwidth, "choose one with BandwidthRules, or pass a width in the unit of the data");
-        var sums = new DirectSums(sample, kernel, bandwidth);
+        KernelSums sums = SumsChoice.For(sample, kernel, bandwidth);
         var form = new LineForm(sums, kernel, bandwidth, new Interval(sample.Minimum, sample.Maximum), new SmoothedDraws(sample, kernel, bandwidth));
         return new Density(sample, kernel, bandwidth, options ?? new DensityOptions(), sums, form);
     }

@@ -1,0 +1,18 @@
+using Smoothing.Kernels;
+using Smoothing.Samples;
+
+namespace Smoothing.Estimation;
+
+/// <summary>Chooses the algorithm behind an estimate from kernel, sample and bandwidth.</summary>
+internal static class SumsChoice
+{
+    public static KernelSums For(Sample sample, Kernel kernel, double bandwidth)
+    {
+        if (CompactSums.Serves(sample, kernel, bandwidth))
+        {
+            return new CompactSums(sample, kernel, bandwidth);
+        }
+
+        return new DirectSums(sample, kernel, bandwidth);
+    }
+}
