@@ -4,6 +4,7 @@ using BenchmarkDotNet.Running;
 string command = args.Length > 0 ? args[0] : "";
 switch (command)
 {
+    case "samples": return Smoothing.Benchmarks.Samples.SampleBench.Run(args[1..]);
     default:
         BenchmarkSwitcher.FromAssembly(typeof(Program).Assembly).Run(args);
         return 0;
