@@ -41,14 +41,17 @@ public sealed partial class Density
     /// <param name="options">Known limits and the like; null for the defaults.</param>
     /// <returns>The estimate.</returns>
     /// <exception cref="ArgumentOutOfRangeException"><paramref name="bandwidth"/> is not positive and finite.</exception>
+    /// <exception cref="ArgumentException">Values lie outside the support, or the options do not go together.</exception>
     public static Density Of(Sample sample, Kernel kernel, double bandwidth, DensityOptions? options = null)
     {
         Guard.Given(sample);
         Guard.Given(kernel);
         Guard.Positive(bandwidth, "choose one with BandwidthRules, or pass a width in the unit of the data");
+        options ??= new DensityOptions();
         KernelSums sums = SumsChoice.For(sample, kernel, bandwidth);
-        var form = new LineForm(sums, kernel, bandwidth, new Interval(sample.Minimum, sample.Maximum), new SmoothedDraws(sample, kernel, bandwidth));
-        return new Density(sample, kernel, bandwidth, options ?? new DensityOptions(), sums, form);
+        var range = new Interval(sample.Minimum, sample.Maximum);
+        CurveForm form = FormChoice.Of(sums, kernel, bandwidth, options, range, sample, (other, h) => SumsChoice.For(other, kernel, h));
+        return new Density(sample, kernel, bandwidth, options, sums, form);
     }
 
     /// <summary>f̂ at one point; 0 at ±∞.</summary>
@@ -78,7 +81,7 @@ public sealed partial class Density
     internal KernelSums Sums => _sums;
 
     /// <summary>Whether the curve is the plain kernel sum on the whole line, so that the sums alone describe it.</summary>
-    internal bool IsPlain => _form is LineForm;
+    internal bool IsPlain => _form is LineForm && Options.Adaptive is null;
 
     /// <summary>The closed range outside which the curve is 0; ends may be infinite.</summary>
     internal Interval Ends => _form.Ends;

@@ -9,13 +9,14 @@ namespace Smoothing.Estimation;
 /// <param name="bandwidth">h.</param>
 /// <param name="range">Smallest and largest value.</param>
 /// <param name="draws">How to draw; null when the values were not kept.</param>
-/// <param name="reach">How far the curve goes beyond the outermost values; null for h times the support radius.</param>
-internal sealed class LineForm(KernelSums sums, Kernel kernel, double bandwidth, Interval range, SmoothedDraws? draws = null, double? reach = null)
+/// <param name="ends">Where the curve ends; null for the outermost values moved out by h times the support radius.</param>
+internal sealed class LineForm(KernelSums sums, Kernel kernel, double bandwidth, Interval range, SmoothedDraws? draws = null, Interval? ends = null)
     : CurveForm
 {
-    private readonly double _reach = reach ?? (bandwidth * kernel.SupportRadius);
+    private readonly double _reach = bandwidth * kernel.SupportRadius;
 
-    public override Interval Ends => new(range.Lower - _reach, range.Upper + _reach);
+    public override Interval Ends { get; } =
+        ends ?? new Interval(range.Lower - (bandwidth * kernel.SupportRadius), range.Upper + (bandwidth * kernel.SupportRadius));
 
     public override Interval Core => range;
 

@@ -9,20 +9,39 @@ namespace Smoothing.Estimation;
 /// Method: the mixture form of the estimate (Silverman 1986, §6.4.1). K is drawn by inverting its distribution function in the lower half,
 /// where it keeps relative accuracy, and mirrored; the Gaussian by the polar method. Exact but for rounding.
 /// </remarks>
-internal sealed class SmoothedDraws(Sample sample, Kernel kernel, double bandwidth, double[]? factors = null)
+internal sealed class SmoothedDraws
 {
-    private readonly double[] _cumulative = Accumulate(sample);
+    private readonly Sample _sample;
+    private readonly Kernel _kernel;
+    private readonly double[] _widths;
+    private readonly Lazy<double[]> _cumulative;
 
-    public Sample Sample => sample;
+    /// <summary>One bandwidth for all values.</summary>
+    public SmoothedDraws(Sample sample, Kernel kernel, double bandwidth)
+        : this(sample, kernel, [bandwidth])
+    {
+    }
+
+    /// <summary>A bandwidth for each value.</summary>
+    public SmoothedDraws(Sample sample, Kernel kernel, double[] widths)
+    {
+        _sample = sample;
+        _kernel = kernel;
+        _widths = widths;
+        _cumulative = new Lazy<double[]>(() => Accumulate(sample));
+    }
+
+    public Sample Sample => _sample;
 
     /// <summary>Fills the destination with independent draws from the plain curve.</summary>
     public void Fill(ref RandomStream random, Span<double> destination)
     {
+        double[] cumulative = _cumulative.Value;
         for (int i = 0; i < destination.Length; i++)
         {
-            int pick = _cumulative.Length == 0 ? random.NextIndex(sample.Count) : Pick(random.NextUniform());
-            double width = factors is null ? bandwidth : bandwidth * factors[pick];
-            destination[i] = sample.Values[pick] + (width * FromKernel(ref random));
+            int pick = cumulative.Length == 0 ? random.NextIndex(_sample.Count) : Pick(cumulative, random.NextUniform());
+            double width = _widths.Length == 1 ? _widths[0] : _widths[pick];
+            destination[i] = _sample.Values[pick] + (width * FromKernel(ref random));
         }
     }
 
@@ -45,15 +64,15 @@ internal sealed class SmoothedDraws(Sample sample, Kernel kernel, double bandwid
     }
 
     // The first index whose running weight exceeds u Σw: values of weight 0 are never picked, as u lies strictly inside (0, 1).
-    private int Pick(double u)
+    private static int Pick(double[] cumulative, double u)
     {
-        double target = u * _cumulative[^1];
+        double target = u * cumulative[^1];
         int low = 0;
-        int high = _cumulative.Length - 1;
+        int high = cumulative.Length - 1;
         while (low < high)
         {
             int middle = (low + high) / 2;
-            if (_cumulative[middle] > target)
+            if (cumulative[middle] > target)
             {
                 high = middle;
             }
@@ -68,6 +87,7 @@ internal sealed class SmoothedDraws(Sample sample, Kernel kernel, double bandwid
 
     private double FromKernel(ref RandomStream random)
     {
+        Kernel kernel = _kernel;
         if (ReferenceEquals(kernel, Kernel.Gaussian))
         {
             return random.NextNormal();

@@ -1,0 +1,149 @@
+using MathNet.Numerics.Integration;
+using Smoothing.Numerics;
+
+namespace Smoothing.Estimation;
+
+/// <summary>Mass of a mended curve over the stretch where a limit is felt, from either side.</summary>
+/// <remarks>
+/// Method: the stretch is cut into panels at every kink of the curve and at most an eighth of a bandwidth wide; each is summed by the
+/// Gauss–Legendre rule, exact for polynomials of degree 23, once, and part of a panel is summed by the same rule on that part. Panels where the raw
+/// curve changes sign are cut there. All weights are positive, so the distribution function never falls. Dominant error: kinks inside a
+/// panel, where a stretch holds more of them than are placed; without those rounding.
+/// </remarks>
+internal sealed class ZoneTable
+{
+    // 12 nodes: on an eighth of a bandwidth the Taylor remainder of the kernels and of the moments' quotient is below 1e-16.
+    private const int Nodes = 12;
+    private const int PanelsPerScale = 8;
+
+    private static readonly double[] s_nodes = new GaussLegendreRule(-1, 1, Nodes).Abscissas;
+    private static readonly double[] s_weights = new GaussLegendreRule(-1, 1, Nodes).Weights;
+
+    private readonly BoundaryCurve _curve;
+    private readonly double[] _edges;
+    private readonly double[] _below;
+    private readonly double[] _above;
+
+    public ZoneTable(BoundaryCurve curve, double from, double to, double scale, IEnumerable<double> kinks)
+    {
+        _curve = curve;
+        _edges = Edges(curve, from, to, scale, kinks);
+        var x = new double[(_edges.Length - 1) * Nodes];
+        for (int k = 0; k + 1 < _edges.Length; k++)
+        {
+            Place(_edges[k], _edges[k + 1], x.AsSpan(k * Nodes, Nodes));
+        }
+
+        var y = new double[x.Length];
+        curve.Derivatives(x, 0, y);
+        _below = new double[_edges.Length];
+        _above = new double[_edges.Length];
+        CompensatedSum sum = default;
+        for (int k = 1; k < _edges.Length; k++)
+        {
+            sum.Add(Panel(k, y));
+            _below[k] = sum.Value;
+        }
+
+        sum = default;
+        for (int k = _edges.Length - 2; k >= 0; k--)
+        {
+            sum.Add(Panel(k + 1, y));
+            _above[k] = sum.Value;
+        }
+    }
+
+    public double From => _edges[0];
+
+    public double To => _edges[^1];
+
+    public double Mass => _below[^1];
+
+    /// <summary>∫ of the mended curve from the start of the stretch to each x, or from x to its end; x inside the stretch.</summary>
+    public void Tails(ReadOnlySpan<double> x, bool upper, Span<double> destination)
+    {
+        var nodes = new double[x.Length * Nodes];
+        var panel = new int[x.Length];
+        for (int i = 0; i < x.Length; i++)
+        {
+            int found = Array.BinarySearch(_edges, x[i]);
+            panel[i] = Math.Clamp(found >= 0 ? found : ~found - 1, 0, _edges.Length - 2);
+            (double a, double b) = upper ? (x[i], _edges[panel[i] + 1]) : (_edges[panel[i]], x[i]);
+            Place(a, b, nodes.AsSpan(i * Nodes, Nodes));
+        }
+
+        var y = new double[nodes.Length];
+        _curve.Derivatives(nodes, 0, y);
+        for (int i = 0; i < x.Length; i++)
+        {
+            double width = upper ? _edges[panel[i] + 1] - x[i] : x[i] - _edges[panel[i]];
+            double part = Sum(y.AsSpan(i * Nodes, Nodes)) * width / 2;
+            destination[i] = part + (upper ? _above[panel[i] + 1] : _below[panel[i]]);
+        }
+    }
+
+    private static double[] Edges(BoundaryCurve curve, double from, double to, double scale, IEnumerable<double> kinks)
+    {
+        int panels = Math.Max(1, (int)Math.Ceiling((to - from) / scale * PanelsPerScale));
+        var edges = new List<double>();
+        for (int i = 0; i <= panels; i++)
+        {
+            edges.Add(i == panels ? to : from + ((to - from) * i / panels));
+        }
+
+        edges.AddRange(kinks.Where(k => k > from && k < to));
+        double[] ordered = [.. edges.Distinct().Order()];
+        return curve.IsCut ? CutAtZeros(curve, ordered) : ordered;
+    }
+
+    // Looks at the raw curve in four places of each panel; where the sign differs the zero becomes an edge.
+    private static double[] CutAtZeros(BoundaryCurve curve, double[] edges)
+    {
+        var result = new List<double> { edges[0] };
+        double last = curve.RawValue(edges[0]);
+        double lastX = edges[0];
+        for (int k = 1; k < edges.Length; k++)
+        {
+            for (int part = 1; part <= 4; part++)
+            {
+                double x = part == 4 ? edges[k] : edges[k - 1] + ((edges[k] - edges[k - 1]) * part / 4);
+                double y = curve.RawValue(x);
+                if (y * last < 0)
+                {
+                    double zero = Roots.Between(curve.RawValue, lastX, x);
+                    if (zero > result[^1] && zero < edges[k])
+                    {
+                        result.Add(zero);
+                    }
+                }
+
+                (last, lastX) = (y, x);
+            }
+
+            result.Add(edges[k]);
+        }
+
+        return [.. result];
+    }
+
+    private static void Place(double from, double to, Span<double> x)
+    {
+        for (int i = 0; i < Nodes; i++)
+        {
+            x[i] = from + ((to - from) * (1 + s_nodes[i]) / 2);
+        }
+    }
+
+    private static double Sum(ReadOnlySpan<double> y)
+    {
+        double sum = 0;
+        for (int i = 0; i < Nodes; i++)
+        {
+            sum += s_weights[i] * y[i];
+        }
+
+        return sum;
+    }
+
+    private double Panel(int k, double[] y) => Sum(y.AsSpan((k - 1) * Nodes, Nodes)) * (_edges[k] - _edges[k - 1]) / 2;
+}

@@ -1,0 +1,330 @@
+using Smoothing.Estimation;
+using Smoothing.Kernels;
+using Smoothing.Numerics;
+using Smoothing.Samples;
+using Smoothing.Tests.Support;
+
+namespace Smoothing.Tests.Estimation;
+
+public class BoundaryTests
+{
+    private const double Infinity = double.PositiveInfinity;
+
+    private static readonly double[] s_values = [0.02, 0.1, 0.15, 0.3, 0.31, 0.5, 0.77, 0.8, 1.2, 1.9, 2.4, 2.95];
+
+    public static TheoryData<BoundaryCorrection, string, double, double, double> Cases()
+    {
+        var cases = new TheoryData<BoundaryCorrection, string, double, double, double>();
+        foreach (BoundaryCorrection correction in new[]
+        {
+            BoundaryCorrection.LinearKernel, BoundaryCorrection.PositiveLinear, BoundaryCorrection.Renormalised, BoundaryCorrection.Reflection, BoundaryCorrection.LogScale,
+        })
+        {
+            foreach (Kernel kernel in new[] { Kernel.Gaussian, Kernel.Epanechnikov })
+            {
+                foreach ((double lower, double upper) in new[] { (0.0, Infinity), (-Infinity, 3.0), (0.0, 3.0) })
+                {
+                    cases.Add(correction, kernel.Name, lower, upper, 0.3);
+                }
+
+                cases.Add(correction, kernel.Name, 0, 3, 2.5);
+            }
+        }
+
+        return cases;
+    }
+
+    [Theory]
+    [MemberData(nameof(Cases))]
+    public void Curve_EveryCorrection_IsOneDistribution(BoundaryCorrection correction, string kernel, double lower, double upper, double h)
+    {
+        Density density = Make(correction, kernel, lower, upper, h);
+        Near.Absolute(1, density.Cumulative(upper), 1e-12);
+        Near.Absolute(1, density.Survival(lower), 1e-12);
+        Near.Absolute(0, density.Cumulative(lower), 1e-15);
+        Near.Absolute(0, density.Survival(upper), 1e-15);
+        Assert.Equal(0.0, density.Value(lower - 1));
+        Assert.Equal(0.0, density.Value(upper + 1));
+
+        double from = Math.Max(lower, -12);
+        double to = Math.Min(upper, 15);
+        double last = density.Cumulative(from);
+        for (int i = 1; i <= 200; i++)
+        {
+            double x = from + ((to - from) * i / 200);
+            double f = density.Value(x);
+            double cumulative = density.Cumulative(x);
+            Assert.True(f >= 0, $"f({x}) = {f}");
+            Assert.True(cumulative >= last, $"F falls at {x}");
+            Near.Absolute(1, cumulative + density.Survival(x), 2e-15);
+            last = cumulative;
+        }
+    }
+
+    // ∫ f by this test's own composite Gauss rule over the kinks of the Epanechnikov kernel, against F.
+    [Theory]
+    [MemberData(nameof(Cases))]
+    public void Cumulative_EveryCorrection_IsTheIntegralOfTheDensity(BoundaryCorrection correction, string kernel, double lower, double upper, double h)
+    {
+        if (correction == BoundaryCorrection.LogScale)
+        {
+            // The log scale is checked on its own variable below: near the limit its curve is too steep for a fixed rule.
+            return;
+        }
+
+        Density density = Make(correction, kernel, lower, upper, h);
+        double from = double.IsFinite(lower) ? lower : -9;
+        double[] kinks = s_values.SelectMany(v => new[] { v - h, v, v + h, -v + h, 6 - v - h, (2 * 3) - v + h }).ToArray();
+        foreach (double x in new[] { 0.01, 0.2, 0.31, 1, 2.2, 2.9 })
+        {
+            double expected = density.Cumulative(from) + Integrate(density.Value, from, x, kinks);
+            Near.Absolute(expected, density.Cumulative(x), 1e-9, $"F({x})");
+        }
+    }
+
+    [Theory]
+    [MemberData(nameof(Cases))]
+    public void Derivatives_EveryCorrection_AreDifferenceQuotients(BoundaryCorrection correction, string kernel, double lower, double upper, double h)
+    {
+        Density density = Make(correction, kernel, lower, upper, h);
+        const double Step = 1e-4;
+        foreach (double x in new[] { 0.057, 0.234, 0.97, 2.63, 2.93 })
+        {
+            double f = density.Value(x);
+
+            // Five-point rule: error about step⁴ times the fifth derivative of what is differenced.
+            Near.Absolute(f, Quotient(density.Cumulative, x, Step), 1e-7, $"F' at {x}");
+            if (f > 0)
+            {
+                Near.Absolute(density.Derivative(x), Quotient(density.Value, x, Step), 1e-5 * (1 + Math.Abs(density.Derivative(x))), $"f' at {x}");
+                if (kernel == "Gaussian")
+                {
+                    Near.Absolute(density.Derivative(x, 2), Quotient(v => density.Derivative(v), x, Step), 1e-4 * (1 + Math.Abs(density.Derivative(x, 2))), $"f'' at {x}");
+                    Near.Absolute(density.Derivative(x, 3), Quotient(v => density.Derivative(v, 2), x, Step), 1e-3 * (1 + Math.Abs(density.Derivative(x, 3))), $"f''' at {x}");
+                }
+            }
+        }
+    }
+
+    [Theory]
+    [MemberData(nameof(Cases))]
+    public void Quantile_EveryCorrection_InvertsBothTails(BoundaryCorrection correction, string kernel, double lower, double upper, double h)
+    {
+        Density density = Make(correction, kernel, lower, upper, h);
+        foreach (double tail in new[] { 1e-12, 1e-9, 1e-4, 0.1, 0.5 })
+        {
+            double low = density.Quantile(tail);
+            double high = density.UpperQuantile(tail);
+
+            // F near a limit is a difference of numbers of order 1 for Reflection, so 1e-15 absolute is what is left there.
+            Near.Absolute(tail, density.Cumulative(low), (1e-10 * tail) + 2e-15);
+            Near.Absolute(tail, density.Survival(high), (1e-10 * tail) + 2e-15);
+            Assert.InRange(low, lower, upper);
+            Assert.InRange(high, low - 1e-12, upper);
+        }
+    }
+
+    [Theory]
+    [MemberData(nameof(Cases))]
+    public void Draw_EveryCorrection_FollowsTheCurveInsideTheLimits(BoundaryCorrection correction, string kernel, double lower, double upper, double h)
+    {
+        Density density = Make(correction, kernel, lower, upper, h);
+        double[] draws = density.Draw(600, 11);
+        Array.Sort(draws);
+        Assert.InRange(draws[0], lower, upper);
+        Assert.InRange(draws[^1], lower, upper);
+        double distance = draws.Select((x, i) => Math.Max(Math.Abs(density.Cumulative(x) - ((double)i / 600)), Math.Abs(density.Cumulative(x) - ((i + 1.0) / 600)))).Max();
+
+        // 2.2/√n is passed with probability about 1e-4 (Kolmogorov's limit law); forty seeded cases.
+        Assert.True(distance < 2.2 / Math.Sqrt(600), $"distance {distance}");
+    }
+
+    [Theory]
+    [MemberData(nameof(Cases))]
+    public void Curve_MirroredData_IsMirrored(BoundaryCorrection correction, string kernel, double lower, double upper, double h)
+    {
+        Density a = Make(correction, kernel, lower, upper, h);
+        var options = new DensityOptions { Support = new Interval(-upper, -lower), Boundary = correction };
+        Density b = Density.Of(Sample.Of(s_values.Select(v => -v).ToArray()), Find(kernel), h, options);
+        foreach (double x in new[] { 0.001, 0.05, 0.4, 1.7, 2.999 })
+        {
+            Near.Absolute(a.Value(x), b.Value(-x), 1e-11 * (1 + a.Value(x)));
+            Near.Absolute(a.Cumulative(x), b.Survival(-x), 1e-12);
+        }
+    }
+
+    // a₀ = 1/2, a₁ = −3/16, a₂ = 1/10 at the limit itself; a₀a₂ − a₁² = 19/1280: by hand from ¾(1 − u²) on [−1, 0].
+    [Fact]
+    public void BoundaryMoments_EpanechnikovAtLimit_AreTheClosedForms()
+    {
+        var moments = new BoundaryMoments(Kernel.Epanechnikov, 2, new Interval(5, Infinity));
+        Near.Relative(0.5, moments.Series(5, 0, 0)[0], 1e-15);
+        Near.Relative(-3.0 / 16, moments.Series(5, 1, 0)[0], 1e-15);
+        Near.Relative(0.1, moments.Series(5, 2, 0)[0], 1e-15);
+    }
+
+    // The expectation of the raw linear curve under a constant or linear density is ∫ K_L(u) g(x − hu) du over the support: exactly g(x).
+    [Theory]
+    [InlineData(0.0)]
+    [InlineData(0.13)]
+    [InlineData(0.7)]
+    [InlineData(1.9)]
+    public void LinearKernel_ConstantAndLinearDensity_AreReproduced(double x)
+    {
+        var support = new Interval(0, 2);
+        foreach (Kernel kernel in new[] { Kernel.Gaussian, Kernel.Epanechnikov })
+        {
+            foreach (double h in new[] { 0.2, 0.9, 3.0 })
+            {
+                var moments = new BoundaryMoments(kernel, h, support);
+                double a0 = moments.Series(x, 0, 0)[0];
+                double a1 = moments.Series(x, 1, 0)[0];
+                double a2 = moments.Series(x, 2, 0)[0];
+                double BoundaryKernel(double u) => (a2 - (a1 * u)) / ((a0 * a2) - (a1 * a1)) * kernel.Value(u);
+                double from = Math.Max((x - 2) / h, -Math.Min(kernel.SupportRadius, 10));
+                double to = Math.Min(x / h, Math.Min(kernel.SupportRadius, 10));
+                Near.Absolute(1, Integrate(BoundaryKernel, from, to, []), 1e-12, "constant");
+                Near.Absolute(x, Integrate(u => BoundaryKernel(u) * (x - (h * u)), from, to, []), 1e-11, "linear");
+            }
+        }
+    }
+
+    // f_L by a plain loop over the formula, renormalised by this test's own integral of its positive part.
+    [Fact]
+    public void LinearKernel_Epanechnikov_IsJonesFormula()
+    {
+        const double H = 0.6;
+        double Raw(double x)
+        {
+            double p = Math.Min(x / H, 1);
+            double Moment(int l) => Integrate(u => Math.Pow(u, l) * 0.75 * (1 - (u * u)), -1, p, []);
+            (double a0, double a1, double a2) = (Moment(0), Moment(1), Moment(2));
+            double sum = s_values.Select(v => (x - v) / H).Where(u => Math.Abs(u) < 1).Sum(u => (a2 - (a1 * u)) / ((a0 * a2) - (a1 * a1)) * 0.75 * (1 - (u * u)));
+            return Math.Max(sum / (s_values.Length * H), 0);
+        }
+
+        Density density = Make(BoundaryCorrection.LinearKernel, "Epanechnikov", 0, Infinity, H);
+        double mass = Integrate(Raw, 0, 4, s_values.SelectMany(v => new[] { v - H, v + H }).Append(H).ToArray());
+        foreach (double x in new[] { 0, 0.1, 0.35, 0.59, 0.8, 2 })
+        {
+            Near.Absolute(Raw(x) / mass, density.Value(x), 1e-8);
+        }
+    }
+
+    [Fact]
+    public void Reflection_AtTheLimit_HasSlopeZeroAndTwiceThePlainValue()
+    {
+        Density plain = Density.Of(Sample.Of(s_values), Kernel.Gaussian, 0.3);
+        Density mirrored = Make(BoundaryCorrection.Reflection, "Gaussian", 0, Infinity, 0.3);
+        Near.Absolute(0, mirrored.Derivative(0), 1e-14);
+        Near.Relative(2 * plain.Value(0), mirrored.Value(0), 1e-14);
+        Near.Absolute(0, Make(BoundaryCorrection.Reflection, "Gaussian", 0, 3, 1).Derivative(3), 1e-14);
+    }
+
+    [Fact]
+    public void LogScale_Curve_IsTheLineCurveOfTheLogarithms()
+    {
+        Density logs = Density.Of(Sample.Of(s_values.Select(v => Math.Log(v)).ToArray()), Kernel.Gaussian, 0.4);
+        Density carried = Make(BoundaryCorrection.LogScale, "Gaussian", 0, Infinity, 0.4);
+        foreach (double x in new[] { 0.003, 0.2, 2, 9 })
+        {
+            Near.Relative(logs.Value(Math.Log(x)) / x, carried.Value(x), 1e-13);
+            Near.Relative(logs.Cumulative(Math.Log(x)), carried.Cumulative(x), 1e-13);
+        }
+
+        Assert.Equal(0.0, carried.Value(0));
+        var error = Assert.Throws<ArgumentException>(() => Density.Of(Sample.Of([1, 0, 2, 0]), Kernel.Gaussian, 1, new DensityOptions { Support = new Interval(0, Infinity), Boundary = BoundaryCorrection.LogScale }));
+        Assert.Contains("values[1] is 0", error.Message, StringComparison.Ordinal);
+        Assert.Contains("2 of 4", error.Message, StringComparison.Ordinal);
+    }
+
+    [Fact]
+    public void None_WithSupport_ChecksTheDataAndLeavesTheCurve()
+    {
+        Density density = Make(BoundaryCorrection.None, "Gaussian", 0, Infinity, 0.3);
+        Assert.Equal(Density.Of(Sample.Of(s_values), Kernel.Gaussian, 0.3).Value(-0.1), density.Value(-0.1));
+    }
+
+    [Fact]
+    public void Of_DataOutsideSupport_NamesFirstValueAndCount()
+    {
+        var options = new DensityOptions { Support = new Interval(0, 10) };
+        var error = Assert.Throws<ArgumentException>(() => Density.Of(Sample.Of([1, -2, 3, 11, 5]), Kernel.Gaussian, 1, options));
+        Assert.Contains("values[1] is -2", error.Message, StringComparison.Ordinal);
+        Assert.Contains("2 of 5", error.Message, StringComparison.Ordinal);
+        Assert.Throws<ArgumentException>(() => Density.Of(Sample.Of([1]), Kernel.Gaussian, 1, new DensityOptions { Support = new Interval(1, 1) }));
+    }
+
+    [Fact]
+    public void Of_OneValueOnTheLimit_Works()
+    {
+        foreach (BoundaryCorrection correction in new[] { BoundaryCorrection.LinearKernel, BoundaryCorrection.PositiveLinear, BoundaryCorrection.Renormalised, BoundaryCorrection.Reflection })
+        {
+            var options = new DensityOptions { Support = new Interval(0, Infinity), Boundary = correction };
+            foreach (Kernel kernel in new[] { Kernel.Gaussian, Kernel.Epanechnikov })
+            {
+                Density density = Density.Of(Sample.Of([0.0]), kernel, 1, options);
+                Near.Absolute(1, density.Cumulative(20), 1e-12, correction.ToString());
+                Assert.True(density.Value(0) > 0);
+                Near.Absolute(0.5, density.Cumulative(density.Quantile(0.5)), 1e-12);
+            }
+        }
+    }
+
+    [Fact]
+    public void Curve_IntegerWeights_EqualRepeatedValues()
+    {
+        Sample weighted = Sample.Of([0.1, 0.5, 2], new SampleOptions { Weights = new double[] { 1, 3, 2 } });
+        Sample repeated = Sample.Of([0.1, 0.5, 0.5, 0.5, 2, 2]);
+        foreach (Kernel kernel in new[] { Kernel.Gaussian, Kernel.Epanechnikov })
+        {
+            var options = new DensityOptions { Support = new Interval(0, 2.5) };
+            Density a = Density.Of(weighted, kernel, 0.6, options);
+            Density b = Density.Of(repeated, kernel, 0.6, options);
+            foreach (double x in new[] { 0, 0.3, 1, 2.4 })
+            {
+                Near.Relative(b.Value(x), a.Value(x), 1e-12);
+                Near.Relative(b.Derivative(x), a.Derivative(x), 1e-10);
+                Near.Absolute(b.Cumulative(x), a.Cumulative(x), 1e-13);
+            }
+        }
+    }
+
+    [Fact]
+    public void Peaks_MonotoneCurveAtALimit_SitOnIt()
+    {
+        double[] values = Enumerable.Range(1, 200).Select(i => -Math.Log((i - 0.5) / 200)).ToArray();
+        PeakSummary found = Density.Of(Sample.Of(values), Kernel.Gaussian, 0.5, new DensityOptions { Support = new Interval(0, Infinity) }).Peaks();
+        Assert.Equal(0.0, found.Peaks[0].Location);
+        Assert.True(found.Peaks[0].AtLimit);
+        Assert.Equal(0.0, found.Highest.Location);
+    }
+
+    private static Kernel Find(string name) => name == "Gaussian" ? Kernel.Gaussian : Kernel.Epanechnikov;
+
+    private static Density Make(BoundaryCorrection correction, string kernel, double lower, double upper, double h) =>
+        Density.Of(Sample.Of(s_values), Find(kernel), h, new DensityOptions { Support = new Interval(lower, upper), Boundary = correction });
+
+    private static double Quotient(Func<double, double> f, double x, double step) =>
+        (f(x - (2 * step)) - (8 * f(x - step)) + (8 * f(x + step)) - f(x + (2 * step))) / (12 * step);
+
+    // Three-point Gauss rule on 400 equal parts between neighbouring kinks.
+    private static double Integrate(Func<double, double> f, double from, double to, double[] kinks)
+    {
+        double[] ends = [.. kinks.Where(k => k > from && k < to).Append(from).Append(to).Distinct().Order()];
+        double sum = 0;
+        for (int i = 1; i < ends.Length; i++)
+        {
+            int parts = Math.Max(4, (int)(400 * (ends[i] - ends[i - 1]) / (to - from)));
+            double width = (ends[i] - ends[i - 1]) / parts;
+            for (int k = 0; k < parts; k++)
+            {
+                double m = ends[i - 1] + (width * (k + 0.5));
+                double d = width / 2 * Math.Sqrt(0.6);
+                sum += width / 18 * ((5 * f(m - d)) + (8 * f(m)) + (5 * f(m + d)));
+            }
+        }
+
+        return sum;
+    }
+}
