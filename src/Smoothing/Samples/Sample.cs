@@ -24,6 +24,7 @@ public sealed partial class Sample
         Unit = options.Unit;
         WeightMeaning = options.WeightMeaning;
         _sorted = new Lazy<(double[], double[])>(Sort);
+        _range = new Lazy<(double, double)>(FindRange);
         (TotalWeight, EffectiveCount, Mean, StandardDeviation) = SampleSummary.Of(values, weights, WeightMeaning);
         _ranks = new Lazy<WeightedRanks>(() => new WeightedRanks(SortedValues, SortedWeights, WeightMeaning == WeightMeaning.Counts ? TotalWeight : EffectiveCount));
         _table = new Lazy<ValueTable>(() => new ValueTable(this));
@@ -70,10 +71,10 @@ public sealed partial class Sample
     public double StandardDeviation { get; }
 
     /// <summary>Smallest value, among those of weight above 0.</summary>
-    public double Minimum => SortedValues[0];
+    public double Minimum => IsSorted ? SortedValues[0] : _range.Value.Least;
 
     /// <summary>Largest value, among those of weight above 0.</summary>
-    public double Maximum => SortedValues[^1];
+    public double Maximum => IsSorted ? SortedValues[^1] : _range.Value.Greatest;
 
     /// <summary>Quantile(0.75) − Quantile(0.25), in the unit of the data, not negative; 0 where half the weight or more is tied at one value.</summary>
     public double InterquartileRange => Quantile(0.75) - Quantile(0.25);

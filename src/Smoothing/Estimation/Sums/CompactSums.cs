@@ -9,8 +9,10 @@ namespace Smoothing.Estimation;
 /// Method: <see cref="CompactBlocks"/>. Which values lie in a window is decided on x ± h without rounding; windows are closed, as
 /// supports are. Relative error about 1e-15 times the condition given at <see cref="EdgeMoments"/>; exact zeros stay 0.
 /// </remarks>
-internal sealed unsafe class CompactSums(Sample sample, Kernel kernel, double bandwidth) : KernelSums
+internal sealed unsafe partial class CompactSums(Sample sample, Kernel kernel, double bandwidth) : KernelSums
 {
+    private const double Largest = 1e290; // x ± h and its rounding error stay finite
+
     private readonly Lazy<CompactBlocks> _blocks = new(() => new CompactBlocks(sample, bandwidth, kernel.EdgePolynomial.Length - 1));
     private readonly Lazy<CompactBlocks> _integrals = new(() => new CompactBlocks(sample, bandwidth, kernel.EdgePolynomial.Length));
     private readonly Lazy<PrefixWeights> _weights = new(() => new PrefixWeights(sample));
@@ -20,11 +22,10 @@ internal sealed unsafe class CompactSums(Sample sample, Kernel kernel, double ba
     /// <summary>Whether exact window ends and powers of h stay inside the range of doubles; otherwise the plain double loop serves.</summary>
     public static bool Serves(Sample sample, Kernel kernel, double bandwidth)
     {
-        const double largest = 1e290;   // x ± h and its rounding error stay finite
         const double smallest = 1e-200; // 1/h and distances divided by it stay finite and normal
         return kernel.SupportRadius == 1 && kernel.EdgePolynomial.Length is > 0 and <= EdgeMoments.MaximumDegree
-            && bandwidth > smallest && bandwidth < largest
-            && sample.Minimum > -largest && sample.Maximum < largest;
+            && bandwidth > smallest && bandwidth < Largest
+            && sample.Minimum > -Largest && sample.Maximum < Largest;
     }
 
     public override void Derivatives(ReadOnlySpan<double> x, int order, Span<double> destination)
@@ -38,7 +39,11 @@ internal sealed unsafe class CompactSums(Sample sample, Kernel kernel, double ba
         }
 
         double factor = 1 / sample.TotalWeight / Math.Pow(bandwidth, order + 1);
-        if (order == 0)
+        if (order == 0 && UsesCells(x))
+        {
+            CellValues(x, right, degree, factor, destination);
+        }
+        else if (order == 0)
         {
             Values(x, right, degree, factor, destination);
         }

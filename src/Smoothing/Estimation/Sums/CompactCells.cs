@@ -1,0 +1,164 @@
+using System.Runtime.CompilerServices;
+
+namespace Smoothing.Estimation;
+
+/// <summary>Exact sums of polynomial kernels at many points over unsorted values: one pass over the values, no sort of them.</summary>
+/// <remarks>
+/// <para>Method: the ends x ± h of all windows and the points x themselves cut the line into cells. Every cell lies wholly inside or
+/// outside each half window, so its values enter by their moments about the cell's lower and upper end alone. Values find their
+/// cell through a table of equal buckets and a few comparisons with the breakpoints, which are exact: rounded to the
+/// doubles that separate inside from outside. Windows then slide over the cells (<see cref="SlidingMoments"/>).</para>
+/// <para>Validity: finite values, ends inside the range of doubles. Dominant error: the kernel's own condition, see
+/// <see cref="EdgeMoments"/>. Many equal terms would drift; sums are carried over to a second, compensated table before any one
+/// cell has taken much more than a thousand values.</para>
+/// </remarks>
+internal sealed unsafe partial class CompactCells
+{
+    private const int BucketsPerPoint = 16;  // about five buckets a breakpoint: most hold none or one
+    private const int LargestBucket = 1 << 22; // a longer table would fall out of every cache
+    private const int Padding = 16;          // breakpoints +∞ after the last: comparisons may read on
+    private const int ShortestRun = 1 << 10; // values that one cell may take before a carry: equal terms drift by 2e-14 at most
+    private const int LongestRun = 1 << 16;  // values between two carries
+
+    private readonly AlignedRoom _breakpoints = new();
+    private readonly AlignedRoom _records = new();
+    private readonly AlignedRoom _carried = new();
+    private readonly AlignedRoom _errors = new();
+    private readonly AlignedRoom _front = new();
+    private double[] _sortedPoints = [];
+    private int[] _order = [];
+    private int[] _lower = [];
+    private int[] _middle = [];
+    private int[] _upper = [];
+    private int[] _buckets = [];
+    private int _points;
+    private int _bucketCount;
+    private int _mostInBucket;
+    private double _origin;
+    private double _scale;
+    private double _inverse;
+    private int _degree;
+    private int _side; // doubles per side of a record: a multiple of four
+
+    private double* Breakpoints => _breakpoints.Pointer + 8; // [−1] is readable
+
+    // The largest double below each breakpoint: the upper end that a cell's values are measured from.
+    private double* Uppers => Breakpoints + (3 * _points) + Padding;
+
+    /// <summary>destination[j] = factor · Σ w P(s) over the closed window of half width <paramref name="bandwidth"/> about x_j, in any order of x; no infinities in x.</summary>
+    public void Evaluate(
+        ReadOnlySpan<double> values, ReadOnlySpan<double> weights, ReadOnlySpan<double> x, double bandwidth, double* polynomial, int degree, double factor, Span<double> destination)
+    {
+        _points = x.Length;
+        _inverse = 1 / bandwidth;
+        _degree = degree;
+        _side = (degree / 4 * 4) + 4;
+        Arrange(x);
+        CutLine(bandwidth);
+        FillBuckets();
+        Accumulate(values, weights);
+        Slide(bandwidth, polynomial, factor, destination);
+    }
+
+    private void Arrange(ReadOnlySpan<double> x)
+    {
+        if (_sortedPoints.Length < x.Length)
+        {
+            _sortedPoints = new double[x.Length];
+            _order = new int[x.Length];
+            _lower = new int[x.Length];
+            _middle = new int[x.Length];
+            _upper = new int[x.Length];
+        }
+
+        x.CopyTo(_sortedPoints);
+        bool ascending = true;
+        for (int j = 0; j < x.Length; j++)
+        {
+            _order[j] = j;
+            ascending &= j == 0 || x[j - 1] <= x[j];
+        }
+
+        if (!ascending)
+        {
+            Array.Sort(_sortedPoints, _order, 0, x.Length);
+        }
+    }
+
+    // Three ascending lists merged: lower ends, points, first doubles beyond the upper ends.
+    private void CutLine(double bandwidth)
+    {
+        int count = 3 * _points;
+        _breakpoints.Of(8 + (2L * (count + Padding)));
+        double* cut = Breakpoints;
+        int a = 0, b = 0, c = 0;
+        double lower = LowerEnd(0, bandwidth), upper = UpperEnd(0, bandwidth);
+        for (int k = 0; k < count; k++)
+        {
+            double middle = b < _points ? _sortedPoints[b] : double.PositiveInfinity;
+            if (a < _points && lower <= middle && lower <= upper)
+            {
+                cut[k] = lower;
+                _lower[a++] = k;
+                lower = a < _points ? LowerEnd(a, bandwidth) : double.PositiveInfinity;
+            }
+            else if (b < _points && middle <= upper)
+            {
+                cut[k] = middle;
+                _middle[b++] = k;
+            }
+            else
+            {
+                cut[k] = upper;
+                _upper[c++] = k;
+                upper = c < _points ? UpperEnd(c, bandwidth) : double.PositiveInfinity;
+            }
+        }
+
+        cut[-1] = cut[0];
+        for (int k = 0; k < Padding; k++)
+        {
+            cut[count + k] = double.PositiveInfinity;
+        }
+
+        double* uppers = Uppers;
+        for (int k = 0; k <= count; k++)
+        {
+            uppers[k] = Math.BitDecrement(cut[k]);
+        }
+    }
+
+    private double LowerEnd(int j, double bandwidth) => WindowEnd.Of(_sortedPoints[j], -bandwidth).Ceiling;
+
+    private double UpperEnd(int j, double bandwidth) => Math.BitIncrement(WindowEnd.Of(_sortedPoints[j], bandwidth).Floor);
+
+    private void FillBuckets()
+    {
+        int count = 3 * _points;
+        double* cut = Breakpoints;
+        _bucketCount = (int)Math.Min(LargestBucket, (long)BucketsPerPoint * _points);
+        if (_buckets.Length < _bucketCount + 1)
+        {
+            _buckets = new int[_bucketCount + 1];
+        }
+
+        _origin = cut[0];
+        _scale = (_bucketCount - 1) / (cut[count - 1] - _origin);
+        Array.Clear(_buckets, 0, _bucketCount + 1);
+        for (int k = 0; k < count; k++)
+        {
+            _buckets[Bucket(cut[k]) + 1]++;
+        }
+
+        _mostInBucket = 0;
+        for (int z = 1; z <= _bucketCount; z++)
+        {
+            _mostInBucket = Math.Max(_mostInBucket, _buckets[z]);
+            _buckets[z] += _buckets[z - 1];
+        }
+    }
+
+    // The same arithmetic as the vector loop below: rounding to the nearest bucket is monotone, and that is all it needs.
+    [MethodImpl(MethodImplOptions.AggressiveInlining)]
+    private int Bucket(double x) => (int)BitConverter.DoubleToInt64Bits(Math.Min(Math.Max((x - _origin) * _scale, 0), _bucketCount - 1) + Rounder);
+}
