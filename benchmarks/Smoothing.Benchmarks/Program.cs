@@ -5,6 +5,7 @@ string command = args.Length > 0 ? args[0] : "";
 switch (command)
 {
     case "samples": return Smoothing.Benchmarks.Samples.SampleBench.Run(args[1..]);
+    case "targets": return Smoothing.Benchmarks.Targets.TargetTable.Run(args[1..]);
     default:
         BenchmarkSwitcher.FromAssembly(typeof(Program).Assembly).Run(args);
         return 0;
