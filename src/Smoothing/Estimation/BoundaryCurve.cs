@@ -44,7 +44,9 @@ internal sealed class BoundaryCurve
         Raw(x, order, destination, cut: IsCut);
     }
 
-    /// <summary>The value before it is cut, for finding where it changes sign.</summary>
+    /// <summary>The values before they are cut, for finding where they change sign.</summary>
+    public void RawValues(ReadOnlySpan<double> x, Span<double> destination) => Raw(x, 0, destination, cut: false);
+
     public double RawValue(double x)
     {
         double result = 0;

@@ -13,7 +13,7 @@ internal sealed class BoundaryForm : CurveForm
 {
     // Kinks of the curve become panel edges up to this many; beyond, kinks are so many and so small that panels a sixty-fourth of h wide
     // average them: the error of F then falls like the inverse square root of their number.
-    private const int MostKinks = 4000;
+    private const int MostKinks = 20_000;
     private const double PanelRefinement = 8;
 
     private readonly KernelSums _sums;
@@ -25,7 +25,7 @@ internal sealed class BoundaryForm : CurveForm
     private readonly BoundaryCurve _curve;
     private readonly Lazy<Parts> _parts;
 
-    public BoundaryForm(KernelSums sums, Kernel kernel, double bandwidth, DensityOptions options, Interval range, Sample? sample)
+    public BoundaryForm(KernelSums sums, Kernel kernel, double bandwidth, DensityOptions options, Interval range, Sample? sample, Func<Sample, double, KernelSums> sumsOf)
     {
         _sums = sums;
         _kernel = kernel;
@@ -33,7 +33,7 @@ internal sealed class BoundaryForm : CurveForm
         _support = options.Support!.Value;
         _range = range;
         _sample = sample;
-        var local = new BoundarySums(sums, kernel, bandwidth, sample);
+        var local = new BoundarySums(sums, kernel, bandwidth, _support, sample, sumsOf);
         if (options.Boundary != BoundaryCorrection.Renormalised)
         {
             Refuse(kernel, options.Boundary, local.HasFirst);
@@ -140,7 +140,7 @@ internal sealed class BoundaryForm : CurveForm
             foreach (double kink in Kinks)
             {
                 ReadOnlySpan<double> sorted = SortedValues;
-                for (int i = BoundarySums.FirstAtLeast(sorted, from - kink); i < sorted.Length && sorted[i] + kink < to && kinks.Count <= MostKinks; i++)
+                for (int i = SortedSearch.Below(sorted, from - kink, 0); i < sorted.Length && sorted[i] + kink < to && kinks.Count <= MostKinks; i++)
                 {
                     kinks.Add(sorted[i] + kink);
                 }

@@ -53,7 +53,7 @@ internal static class FormChoice
                         $"Boundary = {options.Boundary} mends one bandwidth, but Adaptive gives each value its own: use BoundaryCorrection.Reflection or LogScale with it."));
                 }
 
-                return new BoundaryForm(sums, kernel, bandwidth, options, range, sample);
+                return new BoundaryForm(sums, kernel, bandwidth, options, range, sample, sumsOf);
             default:
                 throw new ArgumentException(Guard.Text($"Boundary must be a named BoundaryCorrection, but is {(int)options.Boundary}."));
         }

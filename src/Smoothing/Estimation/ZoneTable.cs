@@ -99,31 +99,26 @@ internal sealed class ZoneTable
     // Looks at the raw curve in four places of each panel; where the sign differs the zero becomes an edge.
     private static double[] CutAtZeros(BoundaryCurve curve, double[] edges)
     {
-        var result = new List<double> { edges[0] };
-        double last = curve.RawValue(edges[0]);
-        double lastX = edges[0];
-        for (int k = 1; k < edges.Length; k++)
+        const int Looks = 4;
+        var x = new double[((edges.Length - 1) * Looks) + 1];
+        for (int i = 0; i < x.Length; i++)
         {
-            for (int part = 1; part <= 4; part++)
-            {
-                double x = part == 4 ? edges[k] : edges[k - 1] + ((edges[k] - edges[k - 1]) * part / 4);
-                double y = curve.RawValue(x);
-                if (y * last < 0)
-                {
-                    double zero = Roots.Between(curve.RawValue, lastX, x);
-                    if (zero > result[^1] && zero < edges[k])
-                    {
-                        result.Add(zero);
-                    }
-                }
-
-                (last, lastX) = (y, x);
-            }
-
-            result.Add(edges[k]);
+            (int k, int part) = (i / Looks, i % Looks);
+            x[i] = part == 0 ? edges[k] : edges[k] + ((edges[k + 1] - edges[k]) * part / Looks);
         }
 
-        return [.. result];
+        var y = new double[x.Length];
+        curve.RawValues(x, y);
+        var result = new List<double>(edges);
+        for (int i = 1; i < x.Length; i++)
+        {
+            if ((y[i - 1] < 0 && y[i] > 0) || (y[i - 1] > 0 && y[i] < 0))
+            {
+                result.Add(Roots.Between(curve.RawValue, x[i - 1], x[i]));
+            }
+        }
+
+        return [.. result.Distinct().Order()];
     }
 
     private static void Place(double from, double to, Span<double> x)
