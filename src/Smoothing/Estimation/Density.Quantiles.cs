@@ -37,6 +37,28 @@ public sealed partial class Density
             : QuantileSearch.Find(_form, 1 - tail, upper: false, SignChanges);
     }
 
+    /// <summary>Quantiles for many probabilities, in any order.</summary>
+    /// <param name="probabilities">Each in [0, 1].</param>
+    /// <param name="destination">Receives one place per probability; at least as long as <paramref name="probabilities"/>.</param>
+    /// <exception cref="ArgumentException">A probability is outside [0, 1] or NaN, or <paramref name="destination"/> is too short.</exception>
+    public void Quantiles(ReadOnlySpan<double> probabilities, Span<double> destination)
+    {
+        Guard.Destination(probabilities.Length, destination.Length);
+        for (int i = 0; i < probabilities.Length; i++)
+        {
+            if (!(probabilities[i] >= 0 && probabilities[i] <= 1))
+            {
+                throw new ArgumentException(
+                    Guard.Text($"probabilities[{i}] must lie in [0, 1], but is {probabilities[i]}: pass a share such as 0.95, not a percentage."), nameof(probabilities));
+            }
+        }
+
+        for (int i = 0; i < probabilities.Length; i++)
+        {
+            destination[i] = Quantile(probabilities[i]);
+        }
+    }
+
     // Where the curve crosses zero; none for kernels that are nowhere negative. Found once, on first need.
     private IReadOnlyList<double> SignChanges => _form.MayBeNegative ? (_signChanges ??= Estimation.SignChanges.Of(_form)) : [];
 }

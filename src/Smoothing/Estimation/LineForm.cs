@@ -14,6 +14,7 @@ internal sealed class LineForm(KernelSums sums, Kernel kernel, double bandwidth,
     : CurveForm
 {
     private readonly double _reach = bandwidth * kernel.SupportRadius;
+    private readonly Lazy<bool> _analytic = new(() => double.IsInfinity(kernel.SupportRadius) && PeakSearch.Smoothness(kernel) == 4);
 
     public override Interval Ends { get; } =
         ends ?? new Interval(range.Lower - (bandwidth * kernel.SupportRadius), range.Upper + (bandwidth * kernel.SupportRadius));
@@ -23,6 +24,8 @@ internal sealed class LineForm(KernelSums sums, Kernel kernel, double bandwidth,
     public override double Scale => bandwidth;
 
     public override bool MayBeNegative => kernel.Order > 2;
+
+    protected override bool IsAnalytic => _analytic.Value;
 
     protected override ReadOnlySpan<double> SortedValues => draws is null ? default : draws.Sample.SortedValues;
 

@@ -1,4 +1,3 @@
-using MathNet.Numerics.Integration;
 using Smoothing.Numerics;
 
 namespace Smoothing.Estimation;
@@ -12,12 +11,7 @@ namespace Smoothing.Estimation;
 /// </remarks>
 internal sealed class ZoneTable
 {
-    // 12 nodes: on an eighth of a bandwidth the Taylor remainder of the kernels and of the moments' quotient is below 1e-16.
-    private const int Nodes = 12;
-    private const int PanelsPerScale = 8;
-
-    private static readonly double[] s_nodes = new GaussLegendreRule(-1, 1, Nodes).Abscissas;
-    private static readonly double[] s_weights = new GaussLegendreRule(-1, 1, Nodes).Weights;
+    private const int Nodes = GaussRule.Nodes;
 
     private readonly BoundaryCurve _curve;
     private readonly double[] _edges;
@@ -31,7 +25,7 @@ internal sealed class ZoneTable
         var x = new double[(_edges.Length - 1) * Nodes];
         for (int k = 0; k + 1 < _edges.Length; k++)
         {
-            Place(_edges[k], _edges[k + 1], x.AsSpan(k * Nodes, Nodes));
+            GaussRule.Place(_edges[k], _edges[k + 1], x.AsSpan(k * Nodes, Nodes));
         }
 
         var y = new double[x.Length];
@@ -69,7 +63,7 @@ internal sealed class ZoneTable
             int found = Array.BinarySearch(_edges, x[i]);
             panel[i] = Math.Clamp(found >= 0 ? found : ~found - 1, 0, _edges.Length - 2);
             (double a, double b) = upper ? (x[i], _edges[panel[i] + 1]) : (_edges[panel[i]], x[i]);
-            Place(a, b, nodes.AsSpan(i * Nodes, Nodes));
+            GaussRule.Place(a, b, nodes.AsSpan(i * Nodes, Nodes));
         }
 
         var y = new double[nodes.Length];
@@ -77,14 +71,14 @@ internal sealed class ZoneTable
         for (int i = 0; i < x.Length; i++)
         {
             double width = upper ? _edges[panel[i] + 1] - x[i] : x[i] - _edges[panel[i]];
-            double part = Sum(y.AsSpan(i * Nodes, Nodes)) * width / 2;
+            double part = GaussRule.Sum(y.AsSpan(i * Nodes, Nodes), width);
             destination[i] = part + (upper ? _above[panel[i] + 1] : _below[panel[i]]);
         }
     }
 
     private static double[] Edges(BoundaryCurve curve, double from, double to, double scale, IEnumerable<double> kinks)
     {
-        int panels = Math.Max(1, (int)Math.Ceiling((to - from) / scale * PanelsPerScale));
+        int panels = Math.Max(1, (int)Math.Ceiling((to - from) / (scale * GaussRule.ShortStretch)));
         var edges = new List<double>();
         for (int i = 0; i <= panels; i++)
         {
@@ -121,24 +115,5 @@ internal sealed class ZoneTable
         return [.. result.Distinct().Order()];
     }
 
-    private static void Place(double from, double to, Span<double> x)
-    {
-        for (int i = 0; i < Nodes; i++)
-        {
-            x[i] = from + ((to - from) * (1 + s_nodes[i]) / 2);
-        }
-    }
-
-    private static double Sum(ReadOnlySpan<double> y)
-    {
-        double sum = 0;
-        for (int i = 0; i < Nodes; i++)
-        {
-            sum += s_weights[i] * y[i];
-        }
-
-        return sum;
-    }
-
-    private double Panel(int k, double[] y) => Sum(y.AsSpan((k - 1) * Nodes, Nodes)) * (_edges[k] - _edges[k - 1]) / 2;
+    private double Panel(int k, double[] y) => GaussRule.Sum(y.AsSpan((k - 1) * Nodes, Nodes), _edges[k] - _edges[k - 1]);
 }

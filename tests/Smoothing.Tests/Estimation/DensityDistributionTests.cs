@@ -105,6 +105,27 @@ public class DensityDistributionTests
         Assert.Equal(0.0, density.Probability(3, 3));
     }
 
+    [Fact]
+    public void Probability_NarrowInterval_KeepsRelativeAccuracy()
+    {
+        // ∫ over a width w about x is w f + w³ f″/24 + …; at w = 1e-6 h two terms are exact to 1e-24.
+        Density density = Density.Of(s_eruptions, Kernel.Gaussian, 0.2);
+        const double W = 1.0 / (1 << 23);
+        double expected = (W * density.Value(3)) + (W * W * W * density.Derivative(3, 2) / 24);
+        Near.Relative(expected, density.Probability(3 - (W / 2), 3 + (W / 2)), 1e-13);
+    }
+
+    [Fact]
+    public void Quantiles_ManyProbabilities_EqualSingleOnes()
+    {
+        Density density = Density.Of(s_eruptions, Kernel.Gaussian, 0.2);
+        var places = new double[4];
+        density.Quantiles([0.5, 0, 0.01, 1], places);
+        Assert.Equal([density.Quantile(0.5), double.NegativeInfinity, density.Quantile(0.01), double.PositiveInfinity], places);
+        Assert.Contains("probabilities[1] must lie in [0, 1], but is 1.2", Assert.Throws<ArgumentException>(() => density.Quantiles([0.5, 1.2], new double[2])).Message, StringComparison.Ordinal);
+        Assert.Throws<ArgumentException>(() => density.Quantiles([0.5, 0.2], new double[1]));
+    }
+
     // One value, Gaussian kernel: the estimate is the normal law itself; printed tables for the common ones.
     [Theory]
     [InlineData(0.5, 0)]
