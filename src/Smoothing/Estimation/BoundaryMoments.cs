@@ -77,7 +77,7 @@ internal sealed class BoundaryMoments
         return sum;
     }
 
-    /// <summary>∫ uˡ K up to <paramref name="u"/>.</summary>
+    /// <summary>∫ uˡ K up to <paramref name="u"/>: in closed form for the Gaussian and for polynomials on [−1, 1], by quadrature otherwise.</summary>
     public static double Incomplete(Kernel kernel, int l, double u)
     {
         if (u > 0)
@@ -85,21 +85,38 @@ internal sealed class BoundaryMoments
             return kernel.Moment(l) - ((l % 2 == 0 ? 1 : -1) * Incomplete(kernel, l, -u));
         }
 
-        if (kernel.EdgePolynomial.IsEmpty)
+        if (l == 0)
         {
-            double phi = NormalLaw.Density(u);
-            return l == 0 ? NormalLaw.Cumulative(u) : l == 1 ? -phi : NormalLaw.Cumulative(u) - (u * phi);
+            return kernel.CumulativeCore(u);
         }
 
+        if (ReferenceEquals(kernel, Kernel.Gaussian))
+        {
+            double phi = NormalLaw.Density(u);
+            return l == 1 ? -phi : NormalLaw.Cumulative(u) - (u * phi);
+        }
+
+        return kernel.EdgePolynomial.IsEmpty ? ByQuadrature(kernel, l, u) : OfPolynomial(kernel.EdgePolynomial, l, u);
+    }
+
+    /// <summary>The same by quadrature, u ≤ 0: every kernel is smooth on the negative half of its support.</summary>
+    public static double ByQuadrature(Kernel kernel, int l, double u)
+    {
+        // ∫ v^l K = u^l C − l ∫ v^{l−1} C with C the distribution function: one power less, no far tail to cut off but the kernel's own.
+        double from = double.IsFinite(kernel.SupportRadius) ? -kernel.SupportRadius : u - (2 * ReachOf(kernel));
+        double integral = u <= from ? 0 : Quadrature.Integrate(v => Math.Pow(v, l - 1) * kernel.CumulativeCore(v), from, u);
+        return (Math.Pow(u, l) * kernel.CumulativeCore(u)) - (l * integral);
+    }
+
+    // With s = 1 + u: ∫ (σ − 1)ˡ P(σ) dσ over [0, s], term by term.
+    private static double OfPolynomial(ReadOnlySpan<double> polynomial, int l, double u)
+    {
         double s = 1 + u;
         double sum = 0;
-        for (int i = 0; s > 0 && i < kernel.EdgePolynomial.Length; i++)
+        for (int i = 0; s > 0 && i < polynomial.Length; i++)
         {
-            double[] shift = l == 0 ? [1] : l == 1 ? [-1, 1] : [1, -2, 1];
-            for (int k = 0; k < shift.Length; k++)
-            {
-                sum += kernel.EdgePolynomial[i] * shift[k] * Math.Pow(s, i + k + 1) / (i + k + 1);
-            }
+            double power = Math.Pow(s, i + 1);
+            sum += polynomial[i] * power * (l == 1 ? (s / (i + 2)) - (1.0 / (i + 1)) : (s * s / (i + 3)) - (2 * s / (i + 2)) + (1.0 / (i + 1)));
         }
 
         return sum;

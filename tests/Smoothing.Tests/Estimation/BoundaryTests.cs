@@ -165,6 +165,28 @@ public class BoundaryTests
         Near.Relative(0.1, moments.Series(5, 2, 0)[0], 1e-15);
     }
 
+    // Closed forms against quadrature of the definition by this test's own rule, and the library's quadrature for kernels without one.
+    [Fact]
+    public void Incomplete_EveryWay_IsTheIntegral()
+    {
+        foreach (Kernel kernel in new[] { Kernel.Gaussian, Kernel.Epanechnikov })
+        {
+            foreach (double u in new[] { -3, -0.95, -0.4, 0, 0.3, 0.8, 2.5 })
+            {
+                for (int l = 0; l <= 2; l++)
+                {
+                    double reach = Math.Min(kernel.SupportRadius, 11);
+                    double expected = u <= -reach ? 0 : Integrate(v => Math.Pow(v, l) * kernel.Value(v), -reach, Math.Min(u, reach), [0]);
+                    Near.Absolute(expected, BoundaryMoments.Incomplete(kernel, l, u), 1e-11, $"{kernel.Name} {l} {u}");
+                    if (l > 0 && u <= 0)
+                    {
+                        Near.Absolute(BoundaryMoments.Incomplete(kernel, l, u), BoundaryMoments.ByQuadrature(kernel, l, u), 1e-14, $"{kernel.Name} {l} {u}");
+                    }
+                }
+            }
+        }
+    }
+
     // The expectation of the raw linear curve under a constant or linear density is ∫ K_L(u) g(x − hu) du over the support: exactly g(x).
     [Theory]
     [InlineData(0.0)]
