@@ -46,7 +46,7 @@ internal static class CompactTargets
             0.35,
             () => values.CopyTo(work, 0),
             () => work.AsSpan().Sort(),
-            () => pairs.LeaveOneOut(width, y));
+            () => pairs.LeaveOneOut(width *= 1 + 1e-12, y)); // another bandwidth each time: tables are laid out anew
     }
 
     private static Target ManyPoints()

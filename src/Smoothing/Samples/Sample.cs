@@ -137,12 +137,23 @@ public sealed partial class Sample
         var values = (double[])_values.Clone();
         if (!IsWeighted)
         {
-            Array.Sort(values);
+            RadixSort.Sort(values);
             return (values, []);
         }
 
-        var weights = (double[])_weights.Clone();
-        Array.Sort(values, weights);
+        var order = new int[values.Length];
+        var weights = new double[values.Length];
+        for (int i = 0; i < order.Length; i++)
+        {
+            order[i] = i;
+        }
+
+        RadixSort.Sort(values, order);
+        for (int i = 0; i < order.Length; i++)
+        {
+            weights[i] = _weights[order[i]];
+        }
+
         return (values, weights);
     }
 }

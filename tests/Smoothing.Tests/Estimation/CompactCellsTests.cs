@@ -17,7 +17,7 @@ public class CompactCellsTests
     {
         double[] values = HardSamples.Make(name, 6000);
         const double width = 0.15;
-        double[] x = HardSamples.Points(values, width, 50);
+        double[] x = HardSamples.Points(values, width, 37);
         var actual = new double[x.Length];
         foreach (EdgeKernel kernel in EdgeKernel.All)
         {
@@ -44,10 +44,10 @@ public class CompactCellsTests
     [MemberData(nameof(Samples))]
     public void Derivatives_ManyRandomPoints_AgreeWithSortedBlocks(string name)
     {
-        double[] values = HardSamples.Make(name, 40_000);
+        double[] values = HardSamples.Make(name, 130_000);
         double[] weights = [.. values.Select((_, i) => 0.5 + (i % 11))];
         var random = new RandomStream(5);
-        double low = values.Order().ElementAt(1000), high = values.OrderDescending().ElementAt(1000);
+        double low = values.Order().ElementAt(3000), high = values.OrderDescending().ElementAt(3000);
         double[] x = [.. Enumerable.Range(0, 4000).Select(j => j % 10 == 9 ? values[j] : low - 0.2 + ((high - low + 0.4) * random.NextUniform()))];
         Sample unsorted = Sample.Of(values, new SampleOptions { Weights = weights });
         Sample sorted = Sample.Of(values, new SampleOptions { Weights = weights });

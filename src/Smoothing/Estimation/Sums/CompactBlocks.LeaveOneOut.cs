@@ -20,25 +20,29 @@ internal sealed unsafe partial class CompactBlocks
     public void OthersAtValues(double* polynomial, int degree, bool lowerOnly, Span<double> destination)
     {
         fixed (double* values = _sample.SortedValues, weights = _sample.SortedWeights, target = destination)
+        fixed (double* leftPrefix = _leftPrefix, leftSuffix = _leftSuffix, rightPrefix = _rightPrefix, rightSuffix = _rightSuffix)
+        fixed (int* firsts = _first, lasts = _last)
         {
+            var lower = new Side(values, weights, firsts, lasts, leftPrefix, leftSuffix, upper: false, _stride);
+            var upper = new Side(values, weights, firsts, lasts, rightPrefix, rightSuffix, upper: true, _stride);
             if (degree <= 2)
             {
-                Others(new QuadraticForm(polynomial, degree), values, weights, lowerOnly, target);
+                Others(new QuadraticForm(polynomial, degree), in lower, in upper, lowerOnly, target);
             }
             else
             {
-                Others(new GeneralForm(polynomial, degree), values, weights, lowerOnly, target);
+                Others(new GeneralForm(polynomial, degree), in lower, in upper, lowerOnly, target);
             }
         }
     }
 
     [MethodImpl(MethodImplOptions.AggressiveOptimization)]
-    private void Others<T>(T form, double* values, double* weights, bool lowerOnly, double* destination)
+    private void Others<T>(T form, in Side lower, in Side upper, bool lowerOnly, double* destination)
         where T : struct, IEdgeForm
     {
         int n = _sample.Count;
+        double* values = lower.Values;
         double* x = stackalloc double[Together];
-        double* results = stackalloc double[Together];
         int low = 0, high = 0;
         for (int i = 0; i < n; i += Together)
         {
@@ -48,30 +52,31 @@ internal sealed unsafe partial class CompactBlocks
                 x[t] = values[i + Math.Min(t, count - 1)];
             }
 
-            var ends = new GroupEnds(x, Bandwidth, _inverse);
-            Vector256<double> first = default, second = default;
+            GroupSum sum = default;
+            var below = new GroupEnd(x, -Bandwidth, _inverse);
+            var above = new GroupEnd(x, Bandwidth, -_inverse);
             double lowest = WindowEnd.Of(x[0], -Bandwidth).Ceiling;
-            double lower = WindowEnd.Of(x[Together - 1], -Bandwidth).Ceiling;
+            double lowerEnd = WindowEnd.Of(x[Together - 1], -Bandwidth).Ceiling;
             while (values[low] < lowest)
             {
                 low++;
             }
 
             int inner = low;
-            while (values[inner] < lower)
+            while (values[inner] < lowerEnd)
             {
                 inner++;
             }
 
-            LeftOf(form, values, weights, in ends, low, inner, i, ref first, ref second);
-            Among(form, values, weights, in ends, i, count, lowerOnly, ref first, ref second);
+            // [low, inner) is inside some of the windows, [inner, i) inside all.
+            Window(in form, in lower, in below, low, inner, i, i, ref sum);
+            Among(in form, in lower, in below, in above, i, count, lowerOnly, ref sum);
             if (!lowerOnly)
             {
-                int after = i + count;
-                double higher = WindowEnd.Of(x[0], Bandwidth).Floor;
+                double upperEnd = WindowEnd.Of(x[0], Bandwidth).Floor;
                 double highest = WindowEnd.Of(x[Together - 1], Bandwidth).Floor;
-                high = Math.Max(high, after);
-                while (high < n && values[high] <= higher)
+                high = Math.Max(high, i + count);
+                while (high < n && values[high] <= upperEnd)
                 {
                     high++;
                 }
@@ -82,153 +87,141 @@ internal sealed unsafe partial class CompactBlocks
                     outer++;
                 }
 
-                RightOf(form, values, weights, in ends, after, high, outer, ref first, ref second);
+                Window(in form, in upper, in above, i + count, i + count, high, outer, ref sum);
             }
 
-            first.Store(results);
-            second.Store(results + 4);
+            sum.First.Store(x);
+            sum.Second.Store(x + 4);
             for (int t = 0; t < count; t++)
             {
-                destination[i + t] = results[t];
+                destination[i + t] = x[t];
             }
         }
     }
 
-    // [low, inner) is inside some of the windows, [inner, stop) inside all.
-    [MethodImpl(MethodImplOptions.AggressiveInlining)]
-    private void LeftOf<T>(T form, double* values, double* weights, in GroupEnds ends, int low, int inner, int stop, ref Vector256<double> first, ref Vector256<double> second)
+    // Values [from, to): those in [inner, outer) are inside all eight half windows, the others inside some.
+    [MethodImpl(MethodImplOptions.AggressiveOptimization)]
+    private static void Window<T>(in T form, in Side side, in GroupEnd end, int from, int inner, int outer, int to, ref GroupSum sum)
         where T : struct, IEdgeForm
     {
         int b = (inner + Size - 1) / Size;
-        int end = stop / Size;
-        if (b >= end)
+        int stop = outer / Size;
+        if (b >= stop)
         {
-            LooseLeft(form, values, weights, in ends, low, stop, ref first, ref second);
+            Loose(in form, in side, in end, from, to, ref sum);
             return;
         }
 
-        LooseLeft(form, values, weights, in ends, low, b * Size, ref first, ref second);
-        LooseLeft(form, values, weights, in ends, end * Size, stop, ref first, ref second);
-        fixed (double* prefix = _leftPrefix, suffix = _leftSuffix)
+        Loose(in form, in side, in end, from, b * Size, ref sum);
+        Loose(in form, in side, in end, stop * Size, to, ref sum);
+        while (b < stop)
         {
-            while (b < end)
+            int last = side.Lasts[b];
+            int start = b;
+            double* moments;
+            if (side.Firsts[b] == b)
             {
-                int last = _last[b];
-                double reference = values[b * Size];
-                double* moments;
-                if (_first[b] == b)
-                {
-                    b = Math.Min(end, last + 1);
-                    moments = prefix + ((long)(b - 1) * _stride);
-                }
-                else if (b < last && end >= last)
-                {
-                    moments = suffix + ((long)b * _stride);
-                    b = last;
-                }
-                else
-                {
-                    LooseLeft(form, values, weights, in ends, b * Size, (b + 1) * Size, ref first, ref second);
-                    b++;
-                    continue;
-                }
-
-                first += form.From(moments, ends.FirstLower(reference));
-                second += form.From(moments, ends.SecondLower(reference));
+                b = Math.Min(stop, last + 1);
+                moments = side.Prefix + ((long)(b - 1) * side.Stride);
             }
+            else if (b == last || stop >= last)
+            {
+                moments = side.Suffix + ((long)b * side.Stride);
+                b = b == last ? last + 1 : last;
+            }
+            else
+            {
+                Loose(in form, in side, in end, b * Size, (b + 1) * Size, ref sum);
+                b++;
+                continue;
+            }
+
+            double reference = side.Upper ? side.Values[(b * Size) - 1] : side.Values[start * Size];
+            sum.First += form.From(moments, end.First(reference));
+            sum.Second += form.From(moments, end.Second(reference));
         }
     }
 
-    // [start, inner) is inside all windows, [inner, outer) inside some.
-    [MethodImpl(MethodImplOptions.AggressiveInlining)]
-    private void RightOf<T>(T form, double* values, double* weights, in GroupEnds ends, int start, int inner, int outer, ref Vector256<double> first, ref Vector256<double> second)
+    [MethodImpl(MethodImplOptions.AggressiveOptimization)]
+    private static void Loose<T>(in T form, in Side side, in GroupEnd end, int from, int to, ref GroupSum sum)
         where T : struct, IEdgeForm
     {
-        int b = (start + Size - 1) / Size;
-        int end = inner / Size;
-        if (b >= end)
-        {
-            LooseRight(form, values, weights, in ends, start, outer, ref first, ref second);
-            return;
-        }
-
-        LooseRight(form, values, weights, in ends, start, b * Size, ref first, ref second);
-        LooseRight(form, values, weights, in ends, end * Size, outer, ref first, ref second);
-        fixed (double* prefix = _rightPrefix, suffix = _rightSuffix)
-        {
-            while (b < end)
-            {
-                int last = _last[b];
-                double reference;
-                double* moments;
-                if (_first[b] == b)
-                {
-                    b = Math.Min(end, last + 1);
-                    moments = prefix + ((long)(b - 1) * _stride);
-                    reference = values[(b * Size) - 1];
-                }
-                else if (b < last && end >= last)
-                {
-                    moments = suffix + ((long)b * _stride);
-                    reference = values[(last * Size) - 1];
-                    b = last;
-                }
-                else
-                {
-                    LooseRight(form, values, weights, in ends, b * Size, (b + 1) * Size, ref first, ref second);
-                    b++;
-                    continue;
-                }
-
-                first += form.From(moments, ends.FirstUpper(reference));
-                second += form.From(moments, ends.SecondUpper(reference));
-            }
-        }
-    }
-
-    [MethodImpl(MethodImplOptions.AggressiveInlining)]
-    private static void LooseLeft<T>(T form, double* values, double* weights, in GroupEnds ends, int from, int to, ref Vector256<double> first, ref Vector256<double> second)
-        where T : struct, IEdgeForm
-    {
+        T kernel = form;
+        double* values = side.Values;
+        double* weights = side.Weights;
+        Vector256<double> first = sum.First;
+        Vector256<double> second = sum.Second;
+        Vector256<double> firstHigh = end.FirstHigh, firstLow = end.FirstLow, secondHigh = end.SecondHigh, secondLow = end.SecondLow;
+        Vector256<double> inverse = end.SignedInverse;
         for (int k = from; k < to; k++)
         {
-            Vector256<double> w = weights == null ? Vector256<double>.One : Vector256.Create(weights[k]);
-            first += GroupEnds.Inside(form, ends.FirstLower(values[k]), w);
-            second += GroupEnds.Inside(form, ends.SecondLower(values[k]), w);
-        }
-    }
+            Vector256<double> value = Vector256.Create(values[k]);
+            Vector256<double> a = (value - firstHigh - firstLow) * inverse;
+            Vector256<double> b = (value - secondHigh - secondLow) * inverse;
+            a = Vector256.GreaterThanOrEqual(a, Vector256<double>.Zero) & kernel.At(a);
+            b = Vector256.GreaterThanOrEqual(b, Vector256<double>.Zero) & kernel.At(b);
+            if (weights != null)
+            {
+                a *= Vector256.Create(weights[k]);
+                b *= Vector256.Create(weights[k]);
+            }
 
-    [MethodImpl(MethodImplOptions.AggressiveInlining)]
-    private static void LooseRight<T>(T form, double* values, double* weights, in GroupEnds ends, int from, int to, ref Vector256<double> first, ref Vector256<double> second)
-        where T : struct, IEdgeForm
-    {
-        for (int k = from; k < to; k++)
-        {
-            Vector256<double> w = weights == null ? Vector256<double>.One : Vector256.Create(weights[k]);
-            first += GroupEnds.Inside(form, ends.FirstUpper(values[k]), w);
-            second += GroupEnds.Inside(form, ends.SecondUpper(values[k]), w);
+            first += a;
+            second += b;
         }
+
+        sum.First = first;
+        sum.Second = second;
     }
 
     // The eight among themselves: a value counts from below for those after it, from above for those before it, not for itself.
-    [MethodImpl(MethodImplOptions.AggressiveInlining)]
-    private static void Among<T>(T form, double* values, double* weights, in GroupEnds ends, int start, int count, bool lowerOnly, ref Vector256<double> first, ref Vector256<double> second)
+    [MethodImpl(MethodImplOptions.AggressiveOptimization)]
+    private static void Among<T>(in T form, in Side side, in GroupEnd below, in GroupEnd above, int start, int count, bool lowerOnly, ref GroupSum sum)
         where T : struct, IEdgeForm
     {
+        T kernel = form;
         Vector256<double> lanes = Vector256.Create(0.0, 1, 2, 3);
-        Vector256<double> others = lanes + Vector256.Create(4.0);
+        Vector256<double> others = Vector256.Create(4.0, 5, 6, 7);
+        double* values = side.Values + start;
         for (int t = 0; t < count; t++)
         {
-            double value = values[start + t];
-            Vector256<double> w = weights == null ? Vector256<double>.One : Vector256.Create(weights[start + t]);
+            double value = values[t];
             Vector256<double> own = Vector256.Create((double)t);
-            first += Vector256.GreaterThan(lanes, own) & GroupEnds.Inside(form, ends.FirstLower(value), w);
-            second += Vector256.GreaterThan(others, own) & GroupEnds.Inside(form, ends.SecondLower(value), w);
+            Vector256<double> a = below.First(value);
+            Vector256<double> b = below.Second(value);
+            Vector256<double> use = Vector256.GreaterThan(lanes, own);
+            Vector256<double> useOther = Vector256.GreaterThan(others, own);
             if (!lowerOnly)
             {
-                first += Vector256.LessThan(lanes, own) & GroupEnds.Inside(form, ends.FirstUpper(value), w);
-                second += Vector256.LessThan(others, own) & GroupEnds.Inside(form, ends.SecondUpper(value), w);
+                a = Vector256.ConditionalSelect(use, a, above.First(value));
+                b = Vector256.ConditionalSelect(useOther, b, above.Second(value));
+                use = ~Vector256.Equals(lanes, own);
+                useOther = ~Vector256.Equals(others, own);
             }
+
+            a = use & Vector256.GreaterThanOrEqual(a, Vector256<double>.Zero) & kernel.At(a);
+            b = useOther & Vector256.GreaterThanOrEqual(b, Vector256<double>.Zero) & kernel.At(b);
+            if (side.Weights != null)
+            {
+                a *= Vector256.Create(side.Weights[start + t]);
+                b *= Vector256.Create(side.Weights[start + t]);
+            }
+
+            sum.First += a;
+            sum.Second += b;
         }
+    }
+
+    // Everything the inner loops read for one half of the window, pinned.
+    private readonly struct Side(double* values, double* weights, int* firsts, int* lasts, double* prefix, double* suffix, bool upper, int stride)
+    {
+        public readonly double* Values = values;
+        public readonly double* Weights = weights;
+        public readonly int* Firsts = firsts;
+        public readonly int* Lasts = lasts;
+        public readonly double* Prefix = prefix;
+        public readonly double* Suffix = suffix;
+        public readonly bool Upper = upper;
+        public readonly int Stride = stride;
     }
 }

@@ -33,10 +33,10 @@ internal sealed unsafe partial class CompactBlocks
                 b = Math.Min(stop, last + 1);
                 sum += Piece(_leftPrefix, b - 1, a, polynomial, degree);
             }
-            else if (b < last && stop >= last)
+            else if (b == last || stop >= last)
             {
                 sum += Piece(_leftSuffix, b, a, polynomial, degree);
-                b = last;
+                b = b == last ? last + 1 : last;
             }
             else
             {
@@ -69,10 +69,11 @@ internal sealed unsafe partial class CompactBlocks
                 b = Math.Min(stop, last + 1);
                 sum += Piece(_rightPrefix, b - 1, Distance(values[(b * Size) - 1], end, -_inverse), polynomial, degree);
             }
-            else if (b < last && stop >= last)
+            else if (b == last || stop >= last)
             {
-                sum += Piece(_rightSuffix, b, Distance(values[(last * Size) - 1], end, -_inverse), polynomial, degree);
-                b = last;
+                int next = b == last ? last + 1 : last;
+                sum += Piece(_rightSuffix, b, Distance(values[(next * Size) - 1], end, -_inverse), polynomial, degree);
+                b = next;
             }
             else
             {

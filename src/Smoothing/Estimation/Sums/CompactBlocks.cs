@@ -10,7 +10,7 @@ namespace Smoothing.Estimation;
 /// own first value. First values of cells are more than h apart, so a window of width h holds at most one of them and falls
 /// into a suffix of one cell and a prefix of the next, plus loose values of the blocks that its ends cut. Each suffix and
 /// prefix is stored twice, as moments about its lower end (for the half window left of x) and about its upper end.</para>
-/// <para>The last block of a cell may stretch past the cell; it is left out of the suffixes and summed value by value.</para>
+/// <para>The last block of a cell may stretch past the cell; it is left out of the suffixes and its own moments stand beside them.</para>
 /// <para>Validity: ascending finite values, no end of a window beyond the largest double. Running sums carry their rounding
 /// error along, so ten million equal values are as exact as ten. Source of the two-stack idea: common practice.</para>
 /// </remarks>
@@ -21,21 +21,19 @@ internal sealed unsafe partial class CompactBlocks
 
     private readonly Sample _sample;
     private readonly int _stride;
-    private readonly double _inverse;
     private readonly int[] _first;
     private readonly int[] _last;
     private readonly double[] _leftPrefix;
     private readonly double[] _leftSuffix;
     private readonly double[] _rightPrefix;
     private readonly double[] _rightSuffix;
+    private double _inverse;
 
     public CompactBlocks(Sample sample, double bandwidth, int degree)
     {
         _sample = sample;
-        Bandwidth = bandwidth;
         Degree = degree;
         _stride = degree + 1;
-        _inverse = 1 / bandwidth;
         int blocks = sample.Count / Size;
         _first = new int[blocks];
         _last = new int[blocks];
@@ -43,20 +41,30 @@ internal sealed unsafe partial class CompactBlocks
         _leftSuffix = new double[blocks * _stride];
         _rightPrefix = new double[blocks * _stride];
         _rightSuffix = new double[blocks * _stride];
-        Group();
-        fixed (double* values = sample.SortedValues, weights = sample.SortedWeights)
-        {
-            for (int first = 0; first < blocks; first = _last[first] + 1)
-            {
-                FillCell(values, weights, first, _last[first]);
-            }
-        }
+        Fill(bandwidth);
     }
 
-    public double Bandwidth { get; }
+    public double Bandwidth { get; private set; }
 
     /// <summary>Highest power of s in the moments.</summary>
     public int Degree { get; }
+
+    /// <summary>Lays the tables out anew for another bandwidth; not while others read them.</summary>
+    public void Fill(double bandwidth)
+    {
+        Bandwidth = bandwidth;
+        _inverse = 1 / bandwidth;
+        Group();
+        fixed (double* values = _sample.SortedValues, weights = _sample.SortedWeights)
+        fixed (double* leftPrefix = _leftPrefix, leftSuffix = _leftSuffix, rightPrefix = _rightPrefix, rightSuffix = _rightSuffix)
+        {
+            for (int first = 0; first < _first.Length; first = _last[first] + 1)
+            {
+                FillPrefixes(values, weights, first, _last[first], leftPrefix, leftSuffix, rightPrefix, rightSuffix);
+                FillSuffixes(values, first, _last[first], leftSuffix, rightSuffix);
+            }
+        }
+    }
 
     private void Group()
     {
@@ -81,45 +89,66 @@ internal sealed unsafe partial class CompactBlocks
         }
     }
 
+    // Leaves the plain moments of every block in the tables of suffixes, where the second pass finds them.
     [MethodImpl(MethodImplOptions.AggressiveOptimization)]
-    private void FillCell(double* values, double* weights, int first, int last)
+    private void FillPrefixes(
+        double* values, double* weights, int first, int last, double* leftPrefix, double* leftSuffix, double* rightPrefix, double* rightSuffix)
     {
         double* block = stackalloc double[EdgeMoments.MaximumDegree + 1];
-        var left = new RunningMoments(stackalloc double[2 * _stride]);
-        var right = new RunningMoments(stackalloc double[2 * _stride]);
+        double* room = stackalloc double[4 * (EdgeMoments.MaximumDegree + 1)];
+        int degree = Degree;
+        var left = new RunningMoments(room, degree);
+        var right = new RunningMoments(room + (2 * (degree + 1)), degree);
         double start = values[first * Size];
-        double stop = values[(last * Size) - (last > first ? 1 : 0)]; // upper end of the block before the last
         for (int b = first; b <= last; b++)
         {
-            double lower = values[b * Size];
-            double upper = values[(b * Size) + Size - 1];
-            Moments(values, weights, b, lower, _inverse, block);
-            EdgeMoments.Shift(block, Degree, (lower - start) * _inverse);
-            left.Add(block);
-            left.Store(_leftPrefix.AsSpan(b * _stride, _stride));
-            Moments(values, weights, b, upper, -_inverse, block);
-            right.Shift(b == first ? 0 : (upper - values[(b * Size) - 1]) * _inverse);
-            right.Add(block);
-            right.Store(_rightPrefix.AsSpan(b * _stride, _stride));
-        }
+            double* x = values + ((long)b * Size);
+            double* w = weights == null ? null : weights + ((long)b * Size);
+            double* below = leftSuffix + ((long)b * _stride);
+            double* above = rightSuffix + ((long)b * _stride);
+            EdgeMoments.OfBlock(x, w, Size, x[0], _inverse, below, degree);
+            EdgeMoments.OfBlock(x, w, Size, x[Size - 1], -_inverse, above, degree);
+            for (int k = 0; k <= degree; k++)
+            {
+                block[k] = below[k];
+            }
 
-        left.Clear();
-        right.Clear();
-        for (int b = last - 1; b >= first; b--)
-        {
-            double lower = values[b * Size];
-            double upper = values[(b * Size) + Size - 1];
-            Moments(values, weights, b, lower, _inverse, block);
-            left.Shift(b == last - 1 ? 0 : (values[(b + 1) * Size] - lower) * _inverse);
+            EdgeMoments.Shift(block, degree, (x[0] - start) * _inverse);
             left.Add(block);
-            left.Store(_leftSuffix.AsSpan(b * _stride, _stride));
-            Moments(values, weights, b, upper, -_inverse, block);
-            EdgeMoments.Shift(block, Degree, (stop - upper) * _inverse);
-            right.Add(block);
-            right.Store(_rightSuffix.AsSpan(b * _stride, _stride));
+            left.Store(leftPrefix + ((long)b * _stride));
+            if (b > first)
+            {
+                right.Shift((x[Size - 1] - x[-1]) * _inverse);
+            }
+
+            right.Add(above);
+            right.Store(rightPrefix + ((long)b * _stride));
         }
     }
 
-    private void Moments(double* values, double* weights, int b, double reference, double signedInverse, double* block) =>
-        EdgeMoments.OfBlock(values + ((long)b * Size), weights == null ? null : weights + ((long)b * Size), Size, reference, signedInverse, block, Degree);
+    [MethodImpl(MethodImplOptions.AggressiveOptimization)]
+    private void FillSuffixes(double* values, int first, int last, double* leftSuffix, double* rightSuffix)
+    {
+        double* room = stackalloc double[4 * (EdgeMoments.MaximumDegree + 1)];
+        int degree = Degree;
+        var left = new RunningMoments(room, degree);
+        var right = new RunningMoments(room + (2 * (degree + 1)), degree);
+        double stop = last > first ? values[(last * Size) - 1] : 0; // upper end of the block before the last
+        for (int b = last - 1; b >= first; b--)
+        {
+            double* x = values + ((long)b * Size);
+            double* below = leftSuffix + ((long)b * _stride);
+            double* above = rightSuffix + ((long)b * _stride);
+            if (b < last - 1)
+            {
+                left.Shift((x[Size] - x[0]) * _inverse);
+            }
+
+            left.Add(below);
+            left.Store(below);
+            EdgeMoments.Shift(above, degree, (stop - x[Size - 1]) * _inverse);
+            right.Add(above);
+            right.Store(above);
+        }
+    }
 }

@@ -12,66 +12,76 @@ internal sealed unsafe partial class CompactCells
     private void Accumulate(ReadOnlySpan<double> values, ReadOnlySpan<double> weights)
     {
         int cells = (3 * _points) + 1;
-        int record = 2 * _side;
-        long size = (long)cells * record;
+        long size = 2L * _side * cells;
         double* records = _records.Of(size);
-        double* carried = _carried.Of(size);
-        double* errors = _errors.Of(size);
         NativeMemory.Clear(records, (nuint)(size * sizeof(double)));
-        NativeMemory.Clear(carried, (nuint)(size * sizeof(double)));
-        NativeMemory.Clear(errors, (nuint)(size * sizeof(double)));
-        int run = ShortestRun;
-        fixed (double* data = values, mass = weights)
+        if (_states.Length < cells)
         {
-            for (int start = 0; start < values.Length;)
+            _states = new int[cells];
+        }
+
+        Array.Clear(_states, 0, cells);
+        _carries = 0;
+        _carried.Of((1L + (values.Length / CarryAfter)) * 4 * _side); // sums and their errors
+        fixed (double* data = values, mass = weights)
+        fixed (int* states = _states)
+        {
+            AddAll(data, mass, values.Length, records, states);
+            for (int k = 0; k < cells; k++)
             {
-                int count = Math.Min(run, values.Length - start);
-                AddRun(data + start, mass == null ? null : mass + start, count, records);
-                run = NextRun(records, record, cells, run);
-                Carry(records, carried, errors, size);
-                start += count;
+                if (states[k] >= CarryAfter)
+                {
+                    Settle(records + (2L * _side * k), states[k] / CarryAfter);
+                }
             }
         }
-
-        for (long t = 0; t < size; t += 4)
-        {
-            (Vector256.Load(carried + t) + Vector256.Load(errors + t)).Store(carried + t);
-        }
     }
 
-    // As long as the fullest cell stays near the shortest run, at most twice the last one.
-    private static int NextRun(double* records, int record, int cells, int run)
+    // place ← place + record without loss (Knuth), record ← 0.
+    [MethodImpl(MethodImplOptions.NoInlining)]
+    private int Carry(double* record, int state)
     {
-        double most = 0, all = 0;
-        for (int k = 0; k < cells; k++)
+        int place = (state / CarryAfter) - 1; // the counter has just run over into the place
+        int width = 2 * _side;
+        double* sums;
+        if (place == 0)
         {
-            double inside = records[(long)k * record];
-            most = Math.Max(most, inside);
-            all += inside;
+            place = ++_carries;
+            sums = _carried.Pointer + (2L * width * (place - 1));
+            new Span<double>(sums, 2 * width).Clear();
+        }
+        else
+        {
+            sums = _carried.Pointer + (2L * width * (place - 1));
         }
 
-        double next = Math.Min(2.0 * run, ShortestRun * all / most);
-        return next < LongestRun ? Math.Max(ShortestRun, (int)next / Strip * Strip) : LongestRun;
-    }
-
-    // carried + errors ← carried + errors + records without loss (Knuth), records ← 0.
-    [MethodImpl(MethodImplOptions.AggressiveOptimization)]
-    private static void Carry(double* records, double* carried, double* errors, long size)
-    {
-        for (long t = 0; t < size; t += 4)
+        for (int t = 0; t < width; t += 4)
         {
-            Vector256<double> a = Vector256.Load(carried + t);
-            Vector256<double> b = Vector256.Load(records + t);
+            Vector256<double> a = Vector256.Load(sums + t);
+            Vector256<double> b = Vector256.Load(record + t);
             Vector256<double> sum = a + b;
             Vector256<double> part = sum - a;
-            (Vector256.Load(errors + t) + ((a - (sum - part)) + (b - part))).Store(errors + t);
-            sum.Store(carried + t);
-            Vector256<double>.Zero.Store(records + t);
+            (Vector256.Load(sums + width + t) + ((a - (sum - part)) + (b - part))).Store(sums + width + t);
+            sum.Store(sums + t);
+            Vector256<double>.Zero.Store(record + t);
+        }
+
+        return place * CarryAfter;
+    }
+
+    private void Settle(double* record, int place)
+    {
+        int width = 2 * _side;
+        Carry(record, (place + 1) * CarryAfter);
+        double* sums = _carried.Pointer + (2L * width * (place - 1));
+        for (int t = 0; t < width; t++)
+        {
+            record[t] = sums[t] + sums[width + t];
         }
     }
 
     [MethodImpl(MethodImplOptions.AggressiveOptimization)]
-    private void AddRun(double* values, double* weights, int count, double* records)
+    private void AddAll(double* values, double* weights, int count, double* records, int* states)
     {
         long* cells = stackalloc long[Strip];
         for (int start = 0; start < count; start += Strip)
@@ -87,7 +97,32 @@ internal sealed unsafe partial class CompactCells
             {
                 AddHigh(values + start, mass, strip, cells, records);
             }
+
+            // A strip is no longer than the counters: each runs over at most once in it.
+            int full = Count(states, cells, strip);
+            for (int i = 0; i < full; i++)
+            {
+                long k = cells[i];
+                states[k] = Carry(records + (2 * _side * k), states[k]) + (states[k] & (CarryAfter - 1));
+            }
         }
+    }
+
+    // Counts the strip's values in their cells; leaves the cells that became full at the front of the list.
+    [MethodImpl(MethodImplOptions.AggressiveOptimization)]
+    private static int Count(int* states, long* cells, int count)
+    {
+        int full = 0;
+        for (int i = 0; i < count; i++)
+        {
+            long k = cells[i];
+            int state = states[k] + 1;
+            states[k] = state;
+            cells[full] = k;
+            full += (state & (CarryAfter - 1)) == 0 ? 1 : 0;
+        }
+
+        return full;
     }
 
     [MethodImpl(MethodImplOptions.AggressiveOptimization)]

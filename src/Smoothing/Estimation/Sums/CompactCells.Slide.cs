@@ -11,9 +11,9 @@ internal sealed unsafe partial class CompactCells
         double* front = _front.Of(2 * cells * stride);
         double* room = stackalloc double[4 * stride];
         double* cut = Breakpoints;
-        double* records = _carried.Pointer;
-        var left = new SlidingMoments(front, new Span<double>(room, 2 * stride), records, 2 * _side, 0, _degree, _inverse, cut, upper: false);
-        var right = new SlidingMoments(front + (cells * stride), new Span<double>(room + (2 * stride), 2 * stride), records, 2 * _side, _side, _degree, _inverse, cut, upper: true);
+        double* records = _records.Pointer;
+        var left = new SlidingMoments(front, room, records, 2 * _side, 0, _degree, _inverse, cut, upper: false);
+        var right = new SlidingMoments(front + (cells * stride), room + (2 * stride), records, 2 * _side, _side, _degree, _inverse, cut, upper: true);
         for (int j = 0; j < _points; j++)
         {
             double x = _sortedPoints[j];

@@ -1,4 +1,5 @@
 using System.Runtime.CompilerServices;
+using Smoothing.Numerics;
 
 namespace Smoothing.Estimation;
 
@@ -9,21 +10,18 @@ namespace Smoothing.Estimation;
 /// cell through a table of equal buckets and a few comparisons with the breakpoints, which are exact: rounded to the
 /// doubles that separate inside from outside. Windows then slide over the cells (<see cref="SlidingMoments"/>).</para>
 /// <para>Validity: finite values, ends inside the range of doubles. Dominant error: the kernel's own condition, see
-/// <see cref="EdgeMoments"/>. Many equal terms would drift; sums are carried over to a second, compensated table before any one
-/// cell has taken much more than a thousand values.</para>
+/// <see cref="EdgeMoments"/>. Many equal terms would drift; a cell's sums move to a compensated place of its own after every 256 values.</para>
 /// </remarks>
 internal sealed unsafe partial class CompactCells
 {
     private const int BucketsPerPoint = 16;  // about five buckets a breakpoint: most hold none or one
     private const int LargestBucket = 1 << 22; // a longer table would fall out of every cache
     private const int Padding = 16;          // breakpoints +∞ after the last: comparisons may read on
-    private const int ShortestRun = 1 << 10; // values that one cell may take before a carry: equal terms drift by 2e-14 at most
-    private const int LongestRun = 1 << 16;  // values between two carries
+    private const int CarryAfter = 256;      // values a cell takes before its sums are carried: equal terms drift by 1e-14 at most
 
     private readonly AlignedRoom _breakpoints = new();
     private readonly AlignedRoom _records = new();
     private readonly AlignedRoom _carried = new();
-    private readonly AlignedRoom _errors = new();
     private readonly AlignedRoom _front = new();
     private double[] _sortedPoints = [];
     private int[] _order = [];
@@ -31,6 +29,8 @@ internal sealed unsafe partial class CompactCells
     private int[] _middle = [];
     private int[] _upper = [];
     private int[] _buckets = [];
+    private int[] _states = []; // for each cell: values taken since the last carry in the low 8 bits, 1 + its place among the carried above
+    private int _carries;
     private int _points;
     private int _bucketCount;
     private int _mostInBucket;
@@ -81,7 +81,7 @@ internal sealed unsafe partial class CompactCells
 
         if (!ascending)
         {
-            Array.Sort(_sortedPoints, _order, 0, x.Length);
+            RadixSort.Sort(_sortedPoints.AsSpan(0, x.Length), _order.AsSpan(0, x.Length));
         }
     }
 

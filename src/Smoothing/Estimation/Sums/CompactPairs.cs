@@ -5,10 +5,12 @@ using Smoothing.Samples;
 namespace Smoothing.Estimation;
 
 /// <summary>Exact leave-one-out values and sums over pairs for polynomial kernels: what cross-validation is made of.</summary>
-/// <remarks>Method: <see cref="CompactBlocks.OthersAtValues"/>. O(n) for each bandwidth once the values are sorted; relative error as <see cref="EdgeMoments"/> says, never a difference that cancels.</remarks>
+/// <remarks>Method: <see cref="CompactBlocks.OthersAtValues"/>. O(n) for each bandwidth once the values are sorted; relative error as <see cref="EdgeMoments"/> says, never a difference that cancels. Keeps its tables from bandwidth to bandwidth; one thread at a time.</remarks>
 internal sealed unsafe class CompactPairs(Sample sample, Kernel kernel)
 {
-    private readonly double[] _room = new double[sample.Count];
+    private double[] _room = [];
+    private CompactBlocks? _blocks;
+    private CompactBlocks? _wideBlocks;
 
     /// <summary>Whether K∗K is one polynomial on [0, 2], so that <see cref="SelfConvolutions"/> can be used: K even in u without odd powers of |u|, of degree at most 7.</summary>
     public static bool HasSelfConvolution(Kernel kernel)
@@ -53,7 +55,7 @@ internal sealed unsafe class CompactPairs(Sample sample, Kernel kernel)
     {
         double* polynomial = stackalloc double[EdgeMoments.MaximumDegree + 1];
         int degree = EdgePolynomials.Derivative(kernel, 0, new Span<double>(polynomial, EdgeMoments.MaximumDegree + 1));
-        new CompactBlocks(sample, bandwidth, degree).OthersAtValues(polynomial, degree, lowerOnly: false, destination);
+        Blocks(ref _blocks, bandwidth, degree).OthersAtValues(polynomial, degree, lowerOnly: false, destination);
         ReadOnlySpan<double> weights = sample.SortedWeights;
         for (int i = 0; i < sample.Count; i++)
         {
@@ -66,7 +68,7 @@ internal sealed unsafe class CompactPairs(Sample sample, Kernel kernel)
     {
         double* polynomial = stackalloc double[EdgeMoments.MaximumDegree + 1];
         int degree = EdgePolynomials.Derivative(kernel, 0, new Span<double>(polynomial, EdgeMoments.MaximumDegree + 1));
-        return Pairs(bandwidth, polynomial, degree);
+        return Pairs(Blocks(ref _blocks, bandwidth, degree), polynomial, degree);
     }
 
     /// <summary>Σ_{j&lt;i} w_i w_j (K∗K)((x_i − x_j)/h); needs <see cref="HasSelfConvolution"/>.</summary>
@@ -87,12 +89,31 @@ internal sealed unsafe class CompactPairs(Sample sample, Kernel kernel)
             }
         }
 
-        return Pairs(2 * bandwidth, polynomial, degree);
+        return Pairs(Blocks(ref _wideBlocks, 2 * bandwidth, degree), polynomial, degree);
     }
 
-    private double Pairs(double width, double* polynomial, int degree)
+    private CompactBlocks Blocks(ref CompactBlocks? kept, double width, int degree)
     {
-        new CompactBlocks(sample, width, degree).OthersAtValues(polynomial, degree, lowerOnly: true, _room);
+        if (kept is null)
+        {
+            kept = new CompactBlocks(sample, width, degree);
+        }
+        else if (kept.Bandwidth != width)
+        {
+            kept.Fill(width);
+        }
+
+        return kept;
+    }
+
+    private double Pairs(CompactBlocks blocks, double* polynomial, int degree)
+    {
+        if (_room.Length == 0)
+        {
+            _room = new double[sample.Count];
+        }
+
+        blocks.OthersAtValues(polynomial, degree, lowerOnly: true, _room);
         return sample.IsWeighted ? TensorPrimitives.Dot<double>(_room, sample.SortedWeights) : TensorPrimitives.Sum<double>(_room);
     }
 }

@@ -43,6 +43,10 @@ internal sealed unsafe partial class CompactSums(Sample sample, Kernel kernel, d
         {
             CellValues(x, right, degree, factor, destination);
         }
+        else if (order == 0 && x.Length >= FewestToSort && !IsAscending(x))
+        {
+            SortedValues(x, right, degree, factor, destination);
+        }
         else if (order == 0)
         {
             Values(x, right, degree, factor, destination);

@@ -120,63 +120,66 @@ internal static unsafe class GaussianDirect
         Vector256<double> most = Vector256.Create(LargestExponent);
         double* rest = stackalloc double[8];
         double* group = stackalloc double[Group];
+        double* ones = stackalloc double[4];
+        new Span<double>(ones, 4).Fill(1);
+        int whole = count / 4 * 4; // the last one to three values wait, filled up with weight 0, in a place of their own
+        int extent = whole < count ? 4 : 0;
+        int first = whole > 0 ? 0 : 1;
+        int stride = weights == null ? 0 : 4;
+        if (extent > 0)
+        {
+            Remainder(values, weights, whole, count, rest);
+        }
+
         for (int j = 0; j < points; j += Group)
         {
             Vector256<double> s0 = default, s1 = default, s2 = default, s3 = default, s4 = default, s5 = default, s6 = default, s7 = default;
             Vector256<double> s8 = default, s9 = default, s10 = default, s11 = default, s12 = default, s13 = default, s14 = default, s15 = default;
             Vector256<double> centre = Vector256.Create(CentreOf(x, j, step));
-            for (int i = 0; i < count; i += 4)
+            for (int part = first; part < 2; part++)
             {
-                Vector256<double> value;
-                Vector256<double> weight;
-                if (i + 4 <= count)
+                double* source = part == 0 ? values : rest;
+                double* stop = part == 0 ? values + whole : rest + extent;
+                double* mass = part == 1 ? rest + 4 : weights == null ? ones : weights;
+                for (; source < stop; source += 4, mass += stride)
                 {
-                    value = Vector256.Load(values + i);
-                    weight = weights == null ? Vector256<double>.One : Vector256.Load(weights + i);
+                    Vector256<double> u = (centre - Vector256.Load(source)) * inverse;
+                    Vector256<double> exponent = Vector256.Min(Vector256.Max(u * minusStep, -most), most);
+                    Vector256<double> g = VectorExp.Of(u * u * minusHalf) * Vector256.Load(mass);
+                    Vector256<double> up = VectorExp.Of(exponent);
+                    Vector256<double> down = Vector256<double>.One / up;
+                    s8 += g;
+                    Vector256<double> f = g * up;
+                    s9 += f;
+                    f *= up;
+                    s10 += f;
+                    f *= up;
+                    s11 += f;
+                    f *= up;
+                    s12 += f;
+                    f *= up;
+                    s13 += f;
+                    f *= up;
+                    s14 += f;
+                    f *= up;
+                    s15 += f;
+                    f = g * down;
+                    s7 += f;
+                    f *= down;
+                    s6 += f;
+                    f *= down;
+                    s5 += f;
+                    f *= down;
+                    s4 += f;
+                    f *= down;
+                    s3 += f;
+                    f *= down;
+                    s2 += f;
+                    f *= down;
+                    s1 += f;
+                    f *= down;
+                    s0 += f;
                 }
-                else
-                {
-                    Remainder(values, weights, i, count, rest);
-                    value = Vector256.Load(rest);
-                    weight = Vector256.Load(rest + 4);
-                }
-
-                Vector256<double> u = (centre - value) * inverse;
-                Vector256<double> exponent = Vector256.Min(Vector256.Max(u * minusStep, -most), most);
-                Vector256<double> g = VectorExp.Of(u * u * minusHalf) * weight;
-                Vector256<double> up = VectorExp.Of(exponent);
-                Vector256<double> down = Vector256<double>.One / up;
-                s8 += g;
-                Vector256<double> f = g * up;
-                s9 += f;
-                f *= up;
-                s10 += f;
-                f *= up;
-                s11 += f;
-                f *= up;
-                s12 += f;
-                f *= up;
-                s13 += f;
-                f *= up;
-                s14 += f;
-                f *= up;
-                s15 += f;
-                f = g * down;
-                s7 += f;
-                f *= down;
-                s6 += f;
-                f *= down;
-                s5 += f;
-                f *= down;
-                s4 += f;
-                f *= down;
-                s3 += f;
-                f *= down;
-                s2 += f;
-                f *= down;
-                s1 += f;
-                f *= down;
-                s0 += f;
             }
 
             group[0] = Vector256.Sum(s0);

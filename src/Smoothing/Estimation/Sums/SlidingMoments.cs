@@ -8,7 +8,7 @@ namespace Smoothing.Estimation;
 /// back that grows cell by cell. When the front is used up, the back becomes the next front. Half windows left of x refer to
 /// lower ends of cells, half windows right of x to upper ends. Each cell is touched twice. Source: common practice.
 /// </remarks>
-internal unsafe ref struct SlidingMoments
+internal unsafe struct SlidingMoments
 {
     private readonly double* _front;
     private readonly double* _records;
@@ -25,7 +25,7 @@ internal unsafe ref struct SlidingMoments
     private double _backReference;
 
     public SlidingMoments(
-        double* front, Span<double> room, double* records, long record, int offset, int degree, double inverse, double* cut, bool upper)
+        double* front, double* room, double* records, long record, int offset, int degree, double inverse, double* cut, bool upper)
     {
         _front = front;
         _records = records;
@@ -35,7 +35,7 @@ internal unsafe ref struct SlidingMoments
         _inverse = inverse;
         _cut = cut;
         _upper = upper;
-        _back = new RunningMoments(room);
+        _back = new RunningMoments(room, degree);
     }
 
     /// <summary>Σ w P over cells [from, to); neither end ever falls from call to call.</summary>
@@ -62,7 +62,7 @@ internal unsafe ref struct SlidingMoments
 
         if (_backEnd > _frontEnd)
         {
-            _back.Store(new Span<double>(moments, _degree + 1));
+            _back.Store(moments);
             sum += EdgeMoments.Evaluate(moments, Distance(_backReference, end), polynomial, _degree);
         }
 
@@ -119,7 +119,7 @@ internal unsafe ref struct SlidingMoments
             }
 
             _back.Add(block);
-            _back.Store(new Span<double>(_front + ((long)k * (_degree + 1)), _degree + 1));
+            _back.Store(_front + ((long)k * (_degree + 1)));
         }
 
         _back.Clear();
