@@ -10,6 +10,9 @@ internal sealed class BoundaryMoments
     // A tail of K, weighted with 1 + u², below this is lost in the rounding of a moment near 1.
     private const double Negligible = 1e-17;
 
+    // A support shorter than this many bandwidths: the difference of two incomplete moments would lose digits, a Gauss rule on either side of 0 does not.
+    private const double ShortSupport = 0.25;
+
     private readonly Kernel _kernel;
     private readonly double _bandwidth;
     private readonly Interval _support;
@@ -48,7 +51,9 @@ internal sealed class BoundaryMoments
         double p = (x - _support.Lower) / _bandwidth;
         double q = (_support.Upper - x) / _bandwidth;
         var series = new double[order + 1];
-        series[0] = (p >= Reach ? _kernel.Moment(l) : Incomplete(_kernel, l, p)) - (q >= Reach ? 0 : Incomplete(_kernel, l, -q));
+        series[0] = p + q <= ShortSupport
+            ? Quadratured(l, p, q)
+            : (p >= Reach ? _kernel.Moment(l) : Incomplete(_kernel, l, p)) - (q >= Reach ? 0 : Incomplete(_kernel, l, -q));
         double scale = 1;
         for (int j = 1; j <= order; j++)
         {
@@ -117,6 +122,25 @@ internal sealed class BoundaryMoments
         {
             double power = Math.Pow(s, i + 1);
             sum += polynomial[i] * power * (l == 1 ? (s / (i + 2)) - (1.0 / (i + 1)) : (s * s / (i + 3)) - (2 * s / (i + 2)) + (1.0 / (i + 1)));
+        }
+
+        return sum;
+    }
+
+    private double Quadratured(int l, double p, double q)
+    {
+        Span<double> x = stackalloc double[GaussRule.Nodes];
+        Span<double> y = stackalloc double[GaussRule.Nodes];
+        double sum = 0;
+        foreach ((double from, double to) in new[] { (-q, 0.0), (0.0, p) })
+        {
+            GaussRule.Place(from, to, x);
+            for (int i = 0; i < x.Length; i++)
+            {
+                y[i] = WeightedDerivative(_kernel, x[i], l, 0);
+            }
+
+            sum += GaussRule.Sum(y, to - from);
         }
 
         return sum;

@@ -6,6 +6,8 @@ namespace Smoothing.Estimation;
 /// <remarks>Arguments are checked by <see cref="Density"/>; x holds no NaN. Forms are immutable once built, or guard their lazy parts.</remarks>
 internal abstract class CurveForm
 {
+    private double[]? _signChanges;
+
     /// <summary>The closed range outside which the curve is 0; ends may be infinite.</summary>
     public abstract Interval Ends { get; }
 
@@ -36,6 +38,12 @@ internal abstract class CurveForm
     /// <summary>Points, increasing, between which the curve changes little: where searches for turning points look.</summary>
     /// <param name="smoothness">How far the chain of derivatives goes; kernels with a short one get their kinks as well.</param>
     public virtual double[] Grid(int smoothness) => CurveGrid.Of(Ends, Core, Scale, SortedValues, smoothness <= 2 ? Kinks : []);
+
+    /// <summary>Where the curve crosses zero; none for curves that are nowhere negative. Found once, on first need.</summary>
+    public IReadOnlyList<double> ZeroCrossings => MayBeNegative ? (_signChanges ??= SignChanges.Of(this)) : [];
+
+    /// <summary>inf{x : F(x) ≥ p} for a lower tail p, or for the upper tail 1 − p; 0 &lt; tail ≤ ½.</summary>
+    public virtual double Quantile(double tail, bool upper) => QuantileSearch.Find(this, tail, upper, ZeroCrossings);
 
     public double Derivative(double x, int order)
     {

@@ -26,7 +26,7 @@ internal sealed class CutForm : CurveForm
 
     public override bool MayBeNegative => false;
 
-    public override double[] Grid(int smoothness) => [.. _raw.Grid(smoothness).Concat(SignChanges.Of(_raw)).Distinct().Order()];
+    public override double[] Grid(int smoothness) => [.. _raw.Grid(smoothness).Concat(_raw.ZeroCrossings).Distinct().Order()];
 
     public override void Derivatives(ReadOnlySpan<double> x, int order, Span<double> destination)
     {
@@ -59,12 +59,12 @@ internal sealed class CutForm : CurveForm
 
     private Pieces Build()
     {
-        double[] changes = SignChanges.Of(_raw);
+        IReadOnlyList<double> changes = _raw.ZeroCrossings;
         var positive = new List<(double From, double To, double Mass)>();
         double from = _raw.Ends.Lower;
-        for (int i = 0; i <= changes.Length; i++)
+        for (int i = 0; i <= changes.Count; i++)
         {
-            double to = i == changes.Length ? _raw.Ends.Upper : changes[i];
+            double to = i == changes.Count ? _raw.Ends.Upper : changes[i];
             double mass = from < to ? _raw.Mass(from, to) : 0;
             if (mass > 0)
             {

@@ -20,8 +20,8 @@ public sealed partial class Density
         Guard.Probability(probability);
         return probability == 0 ? _form.Ends.Lower
             : probability == 1 ? _form.Ends.Upper
-            : probability <= 0.5 ? QuantileSearch.Find(_form, probability, upper: false, SignChanges)
-            : QuantileSearch.Find(_form, 1 - probability, upper: true, SignChanges);
+            : probability <= 0.5 ? _form.Quantile(probability, upper: false)
+            : _form.Quantile(1 - probability, upper: true);
     }
 
     /// <summary>The place above which the share <paramref name="tail"/> lies, inf{x : 1 − F̂(x) ≤ tail}: accurate in the far upper tail, where 1 − p would lose digits.</summary>
@@ -33,8 +33,8 @@ public sealed partial class Density
         Guard.Probability(tail);
         return tail == 0 ? _form.Ends.Upper
             : tail == 1 ? _form.Ends.Lower
-            : tail <= 0.5 ? QuantileSearch.Find(_form, tail, upper: true, SignChanges)
-            : QuantileSearch.Find(_form, 1 - tail, upper: false, SignChanges);
+            : tail <= 0.5 ? _form.Quantile(tail, upper: true)
+            : _form.Quantile(1 - tail, upper: false);
     }
 
     /// <summary>Quantiles for many probabilities, in any order.</summary>
@@ -58,7 +58,4 @@ public sealed partial class Density
             destination[i] = Quantile(probabilities[i]);
         }
     }
-
-    // Where the curve crosses zero; none for kernels that are nowhere negative. Found once, on first need.
-    private IReadOnlyList<double> SignChanges => _form.MayBeNegative ? (_signChanges ??= Estimation.SignChanges.Of(_form)) : [];
 }

@@ -10,7 +10,6 @@ public sealed partial class Density
 {
     private readonly KernelSums _sums;
     private readonly CurveForm _form;
-    private double[]? _signChanges;
 
     private Density(Sample? sample, Kernel kernel, double bandwidth, DensityOptions options, KernelSums sums, CurveForm form)
     {

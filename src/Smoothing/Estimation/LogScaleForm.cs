@@ -26,7 +26,8 @@ internal sealed class LogScaleForm : CurveForm
 
     public override Interval Core { get; }
 
-    public override double Scale => Math.Max(Core.Length, Math.BitIncrement(Math.Abs(Core.Upper)) - Math.Abs(Core.Upper)) * Math.Min(1, _bandwidth);
+    // The distance to the nearer limit is the length that the logarithm stretches to 1.
+    public override double Scale => Math.Min(Core.Lower - _support.Lower, _support.Upper - Core.Upper) * Math.Min(1, _bandwidth);
 
     public override bool MayBeNegative => _line.MayBeNegative;
 
@@ -94,6 +95,8 @@ internal sealed class LogScaleForm : CurveForm
 
         _line.Cumulatives(y, upper, destination);
     }
+
+    public override double Quantile(double tail, bool upper) => Back(_line.Quantile(tail, upper));
 
     public override bool TryDraw(ref RandomStream random, Span<double> destination)
     {

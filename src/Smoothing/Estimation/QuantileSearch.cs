@@ -27,7 +27,10 @@ internal static class QuantileSearch
 
     private static (double Low, double High) Bracket(CurveForm form, double tail, bool upper)
     {
-        double step = form.Scale;
+        // At least the spacing of doubles at the core, so that doubling gets somewhere.
+        double smallest = Math.BitIncrement(Math.Max(Math.Abs(form.Core.Lower), Math.Abs(form.Core.Upper))) - Math.Max(Math.Abs(form.Core.Lower), Math.Abs(form.Core.Upper));
+        double first = Math.Max(form.Scale, smallest);
+        double step = first;
         double low = form.Core.Lower;
         while (Excess(form, low, tail, upper) >= 0 && low > form.Ends.Lower)
         {
@@ -35,7 +38,7 @@ internal static class QuantileSearch
             step *= 2;
         }
 
-        step = form.Scale;
+        step = first;
         double high = form.Core.Upper;
         while (Excess(form, high, tail, upper) < 0 && high < form.Ends.Upper)
         {

@@ -132,12 +132,13 @@ internal sealed class ReflectionForm : CurveForm
             return _line.Tail(x, upper) + _line.Tail((2 * limit) - x, !upper);
         }
 
+        // The interval about the limit itself keeps x as one end, to the last digit; its images matter only where the support is short.
+        double sum = upper ? _line.Mass(x, (2 * centre) - x) : _line.Mass((2 * centre) - x, x);
         double half = Math.Abs(x - centre);
-        double sum = 0;
-        for (int k = -_images; k <= _images; k++)
+        for (int k = 1; k <= _images; k++)
         {
-            double at = centre + (k == 0 ? 0 : k * _period);
-            sum += _line.Mass(at - half, at + half);
+            sum += _line.Mass(centre - (k * _period) - half, centre - (k * _period) + half);
+            sum += _line.Mass(centre + (k * _period) - half, centre + (k * _period) + half);
         }
 
         return _line.MayBeNegative ? sum : Math.Min(sum, 1);

@@ -25,13 +25,18 @@ internal sealed class TurningPoints
     {
         _form = form;
         _top = smoothness;
-        _x = form.Grid(smoothness);
-        _derivatives = new double[smoothness + 1][];
+        double[] x = form.Grid(smoothness);
+        double[][] derivatives = new double[smoothness + 1][];
         for (int order = 0; order <= smoothness; order++)
         {
-            _derivatives[order] = new double[_x.Length];
-            form.Derivatives(_x, order, _derivatives[order]);
+            derivatives[order] = new double[x.Length];
+            form.Derivatives(x, order, derivatives[order]);
         }
+
+        // Next to a limit, on the log scale, high derivatives can leave the range of doubles: such points say nothing.
+        int[] kept = [.. Enumerable.Range(0, x.Length).Where(i => derivatives.All(d => double.IsFinite(d[i])))];
+        _x = kept.Length == 0 ? [form.Core.Lower + (form.Core.Length / 2)] : [.. kept.Select(i => x[i])];
+        _derivatives = [.. derivatives.Select(d => kept.Length == 0 ? [0.0] : kept.Select(i => d[i]).ToArray())];
     }
 
     /// <summary>Maxima and minima in turn, beginning and ending with a maximum.</summary>

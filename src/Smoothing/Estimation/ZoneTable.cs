@@ -13,6 +13,9 @@ internal sealed class ZoneTable
 {
     private const int Nodes = GaussRule.Nodes;
 
+    // Where the support is short against the bandwidth the moments change on the length of the support, not of the bandwidth.
+    private const int FewestPanels = 16;
+
     private readonly BoundaryCurve _curve;
     private readonly double[] _edges;
     private readonly double[] _below;
@@ -78,7 +81,7 @@ internal sealed class ZoneTable
 
     private static double[] Edges(BoundaryCurve curve, double from, double to, double scale, IEnumerable<double> kinks)
     {
-        int panels = Math.Max(1, (int)Math.Ceiling((to - from) / (scale * GaussRule.ShortStretch)));
+        int panels = Math.Max(FewestPanels, (int)Math.Ceiling((to - from) / (scale * GaussRule.ShortStretch)));
         var edges = new List<double>();
         for (int i = 0; i <= panels; i++)
         {

@@ -332,6 +332,48 @@ public class BoundaryTests
         }
     }
 
+    // h → ∞ on a bounded support: the cut kernel is flat, the linear boundary kernel fits the best straight line, which for one value at 0 is 4 − 6x on
+    // the unit interval, cut at 2/3 and divided by its positive mass 4/3.
+    [Theory]
+    [InlineData(30)]
+    [InlineData(1e5)]
+    public void Curve_HugeBandwidth_IsFlatOrTheBestStraightLine(double h)
+    {
+        var unit = new Interval(0, 1);
+        foreach (Kernel kernel in new[] { Kernel.Gaussian, Kernel.Epanechnikov })
+        {
+            Density flat = Density.Of(Sample.Of([0.0]), kernel, h, new DensityOptions { Support = unit, Boundary = BoundaryCorrection.Renormalised });
+            Density line = Density.Of(Sample.Of([0.0]), kernel, h, new DensityOptions { Support = unit });
+            foreach (double x in new[] { 0, 0.25, 0.6, 0.9 })
+            {
+                Near.Absolute(1, flat.Value(x), 2e-3);
+                Near.Absolute(Math.Max(4 - (6 * x), 0) * 0.75, line.Value(x), 1e-2);
+            }
+
+            Near.Absolute(1, line.Cumulative(1), 1e-12);
+            Near.Absolute(0.9, line.Cumulative(line.Quantile(0.9)), 1e-12);
+        }
+    }
+
+    [Fact]
+    public void Reflection_TinyBandwidthFarFromTheOtherLimit_KeepsItsQuantiles()
+    {
+        // One value on the limit, mirrored: a half-normal of scale h; its median is 0.6744897501960817 h (common tables).
+        const double H = 1e-6;
+        Density density = Density.Of(Sample.Of([0.0]), Kernel.Gaussian, H, new DensityOptions { Support = new Interval(0, Infinity), Boundary = BoundaryCorrection.Reflection });
+        Near.Relative(0.6744897501960817 * H, density.Quantile(0.5), 1e-13);
+        Near.Relative(3.2905267314919255 * H, density.UpperQuantile(0.001), 1e-12);
+    }
+
+    [Fact]
+    public void Peaks_LogScaleNextToTheLimit_SurviveOverflowingDerivatives()
+    {
+        var options = new DensityOptions { Support = new Interval(0, Infinity), Boundary = BoundaryCorrection.LogScale };
+        PeakSummary found = Density.Of(Sample.Of([1e-300, 1]), Kernel.Gaussian, 0.5, options).Peaks();
+        Assert.NotEmpty(found.Peaks);
+        Assert.All(found.Peaks, p => Assert.True(double.IsFinite(p.Location)));
+    }
+
     [Fact]
     public void Curve_IntegerWeights_EqualRepeatedValues()
     {
