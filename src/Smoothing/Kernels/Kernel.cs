@@ -7,7 +7,7 @@ namespace Smoothing.Kernels;
 /// An estimate at bandwidth h uses K((x − X)/h)/h, so h is the scale of K as written here, not its standard deviation.
 /// Kernels are immutable and safe to share between threads. Constants: closed forms, 1e-14 relative.
 /// </remarks>
-public abstract class Kernel
+public abstract partial class Kernel
 {
     private protected Kernel()
     {

@@ -18,6 +18,21 @@ internal static class SumsChoice
             return new GaussianDirectSums(sample, kernel, bandwidth);
         }
 
+        if (WindowedSums.Serves(kernel, bandwidth))
+        {
+            return new WindowedSums(sample, kernel, bandwidth);
+        }
+
+        if (ExponentialSums.Serves(kernel, bandwidth))
+        {
+            return new ExponentialSums(sample, kernel, bandwidth);
+        }
+
+        if (PanelSums.Serves(kernel, bandwidth))
+        {
+            return new PanelSums(sample, kernel, bandwidth);
+        }
+
         return new DirectSums(sample, kernel, bandwidth);
     }
 }
