@@ -7,6 +7,7 @@ switch (command)
     case "samples": return Smoothing.Benchmarks.Samples.SampleBench.Run(args[1..]);
     case "targets": return Smoothing.Benchmarks.Targets.TargetTable.Run(args[1..]);
     case "limits": return Smoothing.Benchmarks.Estimation.LimitsBench.Run(args[1..]);
+    case "selectors": return Smoothing.Benchmarks.SelectorsBench.Run(args[1..]);
     default:
         BenchmarkSwitcher.FromAssembly(typeof(Program).Assembly).Run(args);
         return 0;

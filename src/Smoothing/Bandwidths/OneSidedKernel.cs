@@ -11,7 +11,7 @@ internal static class OneSidedKernel
     /// <summary>s₀s₂ − s₁² = ¼ − 1/(2π).</summary>
     private const double Determinant = 0.25 - (S1 * S1);
 
-    /// <summary>Table of ∫φ sin(wu) over u ≥ 0 up to w = 30 in steps of 1/128; cubic interpolation errs by 1e-10 (step⁴·max|S⁗|·3/128).</summary>
+    /// <summary>Table of ∫φ sin(wu) over u ≥ 0 up to w = 30 in steps of 1/128; cubic interpolation with central slopes errs by 0.016·step³·max|S‴| = 2e-8.</summary>
     private const double TableEnd = 30;
     private const int PerUnit = 128;
 

@@ -24,6 +24,9 @@ internal sealed class GapMap
     /// <summary>Distance of the outermost values after closing.</summary>
     public double Length { get; }
 
+    /// <summary>The limit: gaps above it were closed to it.</summary>
+    public double Gap => _gap;
+
     /// <summary>Number of gaps closed.</summary>
     public int Count => _ends.Length;
 
@@ -55,6 +58,14 @@ internal sealed class GapMap
         }
 
         return value - _anchors[run] + _places[run];
+    }
+
+    /// <summary>The point of the line behind a closed place; places inside a closed gap belong to its nearer end.</summary>
+    public double Open(double place)
+    {
+        int run = Array.BinarySearch(_places, place + (0.5 * _gap));
+        run = run < 0 ? Math.Max(0, ~run - 1) : run;
+        return Count == 0 ? place + _anchors[0] : place - _places[run] + _anchors[run];
     }
 
     /// <summary>Where any point lies after closing; false deep inside a closed gap, farther than half of the limit from both ends.</summary>
