@@ -8,6 +8,7 @@ switch (command)
     case "targets": return Smoothing.Benchmarks.Targets.TargetTable.Run(args[1..]);
     case "limits": return Smoothing.Benchmarks.Estimation.LimitsBench.Run(args[1..]);
     case "selectors": return Smoothing.Benchmarks.SelectorsBench.Run(args[1..]);
+    case "sql": return Smoothing.Benchmarks.Sql.SqlBench.Run(args[1..]);
     default:
         BenchmarkSwitcher.FromAssembly(typeof(Program).Assembly).Run(args);
         return 0;
