@@ -120,9 +120,9 @@ internal sealed class SelectorErrors
         return Math.Min(values.Min(), minima.Count > 0 ? minima.Min(m => m.Value) : double.PositiveInfinity);
     }
 
-    public double Sharp(double h, double sharp)
+    public double Sharp(double h, double sharp, double latticeStep)
     {
-        double[] multiplier = SharpFilter.Multiplier(_spectrum, h, sharp);
+        double[] multiplier = SharpFilter.Multiplier(_spectrum, h, sharp, latticeStep);
         int size = Math.Min(SelectorTruth.Nodes, _spectrum.SizeFor(Math.Min(h, sharp) / 8, multiplier.Length));
         double[] curve = _spectrum.Curve(multiplier, size);
         double spacing = _truth.Length / size;

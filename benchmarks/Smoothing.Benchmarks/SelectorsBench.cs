@@ -79,17 +79,17 @@ internal static class SelectorsBench
 
             Sample sample = Sample.Of(x);
             SelectorErrors errors = truth.For(sample.SortedValues, n);
-            double spread = truth.Length / 40;
-            double oracle = (target.Step > 0 ? truth.For(exact, n) : errors).Oracle(spread / 40, spread * 8);
-            Try(tallies, sample, errors, oracle, target, likelihood: r < Math.Max(1, samples / 5));
+            double quartiles = exact[3 * n / 4] - exact[n / 4];
+            double oracle = (target.Step > 0 ? truth.For(exact, n) : errors).Oracle(0.006 * quartiles, 1.5 * quartiles);
+            Try(tallies, sample, errors, oracle, likelihood: r < Math.Max(1, samples / 5));
         }
 
         return tallies;
     }
 
-    private static void Try(Dictionary<string, Tally> tallies, Sample sample, SelectorErrors errors, double oracle, SelectorTarget target, bool likelihood)
+    private static void Try(Dictionary<string, Tally> tallies, Sample sample, SelectorErrors errors, double oracle, bool likelihood)
     {
-        SelectionInput input = SelectionInput.Of(sample, Options(target));
+        SelectionInput input = SelectionInput.Of(sample, null);
         double automatic = double.NaN;
         foreach (BandwidthRule rule in Enum.GetValues<BandwidthRule>())
         {
@@ -106,12 +106,10 @@ internal static class SelectorsBench
 
         // R of (3 − u²)φ(u)/2 is 27/(32√π); 1.9 is the ratio of normal references at n = 1000, only the range of the search rests on it.
         double fourth = BlockSpectrumRule.Find(input, 4, 27 / (32 * NormalLaw.SqrtPi), 1.9).Value * input.Unit;
-        fourth = Math.Max(fourth, input.Floor * input.Unit);
+        fourth = Math.Max(fourth, RuleDispatch.HigherOrderFloor * input.Floor * input.Unit);
         Add(tallies, Fourth, errors.Gaussian(fourth, 4), oracle, false);
-        Add(tallies, Sharp, errors.Sharp(automatic, fourth), oracle, false);
+        Add(tallies, Sharp, errors.Sharp(automatic, fourth, input.LatticeStep * input.Unit), oracle, false);
     }
-
-    private static BandwidthOptions Options(SelectorTarget target) => new() { RoundingUnit = target.Step > 0 ? target.Step : null };
 
     private static void Add(Dictionary<string, Tally> tallies, string rule, double error, double oracle, bool notFound)
     {

@@ -20,7 +20,7 @@ public sealed record BandwidthOptions
     /// <summary>Largest bandwidth of the search, in the unit of the data, for the Gaussian kernel. Null: a multiple of the robust scale times n^(−1/5) that each rule states.</summary>
     public double? LargestBandwidth { get; init; }
 
-    /// <summary>The step the values were rounded to, in the unit of the data; 0 to treat them as not rounded. Null (the default): what the sample noticed.</summary>
+    /// <summary>The step the values were rounded to, in the unit of the data; 0 to treat them as not rounded. Null (the default): what the sample noticed, when more than 5 % of the observations are tied.</summary>
     public double? RoundingUnit { get; init; }
 
     /// <summary>Whether <see cref="BandwidthChoice.Objective"/> is filled, for a figure. Default false.</summary>

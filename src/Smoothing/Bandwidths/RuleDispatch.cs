@@ -10,7 +10,22 @@ internal static partial class RuleDispatch
     public static BandwidthChoice Choose(BandwidthRule rule, SelectionInput input, Kernel kernel)
     {
         Guard.Given(kernel);
-        return Finish(Find(rule, input, kernel), input, kernel);
+        RuleOutcome outcome = Find(rule, input, kernel);
+        if (!(outcome.Value > 0 && double.IsFinite(outcome.Value)))
+        {
+            double spread = input.ScaleFor(BandwidthScale.Robust);
+            outcome = outcome with
+            {
+                Value = NormalReferenceRule.Bandwidth(kernel, input.Options.Derivative, spread, input.N),
+                Scale = spread,
+                IsExact = true,
+                Status = BandwidthStatus.Replaced,
+                ReplacedBy = BandwidthRule.NormalReference,
+                Notes = [.. outcome.Notes, Guard.Text($"{rule} gave no usable number; the normal reference stands in.")],
+            };
+        }
+
+        return Finish(outcome, input, kernel);
     }
 
     /// <summary>The bandwidth for the smoothed distribution function.</summary>
@@ -85,21 +100,27 @@ internal static partial class RuleDispatch
         };
     }
 
+    /// <summary>A fourth-order Gaussian kernel shows the lattice's ripple 2(1 + z)exp(−z), z = 2π²h²/δ², at 1.4 % with h = 0.61δ in place of 0.5δ.</summary>
+    internal const double HigherOrderFloor = 1.25;
+
     private static BandwidthChoice Finish(RuleOutcome outcome, SelectionInput input, Kernel kernel)
     {
         int r = input.Options.Derivative;
         double factor = outcome.IsExact ? 1 : KernelFactors.FromGaussian(kernel, r) * (r == 0 ? 1 : KernelFactors.FromDensity(r, input.N));
-        double floor = input.Floor * (kernel.Order == 2 ? KernelFactors.FromGaussian(kernel, 0) : kernel.CanonicalBandwidth / Kernel.Gaussian.CanonicalBandwidth);
+        double floor = input.Floor * (kernel.Order == 2 ? KernelFactors.FromGaussian(kernel, 0) : HigherOrderFloor * kernel.Order / 4);
         double scaled = factor * input.Unit;
         double value = outcome.Value * factor;
         var notes = new List<string>(input.Notes);
         notes.AddRange(outcome.Notes);
         BandwidthStatus status = outcome.Status;
-        if (!(value >= floor))
+        // A search that starts at the floor and stays there has met it.
+        if (!(value > floor * (1 + 1e-12)) && floor > 0)
         {
             value = floor;
             status = BandwidthStatus.RoundingFloor;
-            notes.Add(Guard.Text($"Rounding limits the resolution: the rule asks for less than half the rounding step of {input.RoundingUnit * input.Unit:G6}."));
+            notes.Add(input.CellFloor > 0.5 * input.RoundingUnit
+                ? "The cells limit the resolution: the rule asks for less than two cell widths; condense with narrower cells."
+                : Guard.Text($"Rounding limits the resolution: the rule asks for less than half the rounding step of {input.RoundingUnit * input.Unit:G6}."));
         }
 
         double[] candidates = [.. outcome.Candidates.Select(c => c.Value)];

@@ -62,7 +62,13 @@ internal sealed partial class SelectionInput
     public List<string> Notes { get; } = [];
 
     /// <summary>Half the coarser step: below it the ripple of the lattice shows (1.4 % at one half, 8.5 % at 0.4: 2 exp(−2π²h²/δ²)).</summary>
-    public double Floor => 0.5 * RoundingUnit;
+    public double Floor => Math.Max(0.5 * RoundingUnit, CellFloor);
+
+    /// <summary>Two cell widths of a condensed sample, whose values stand at the means of their cells; 0 for a sample.</summary>
+    public double CellFloor { get; private init; }
+
+    /// <summary>Values at cell means lose the spread in the cell, δ²/12: at h = 2δ that is 1 % of h.</summary>
+    private const double CellsPerBandwidth = 2;
 
     /// <summary>1 on the whole line; 2 with limits: ∫ over the support of f′² is twice that of the reflected density.</summary>
     public double Reflection { get; private init; } = 1;

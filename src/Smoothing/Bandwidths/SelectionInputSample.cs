@@ -43,7 +43,10 @@ internal sealed partial class SelectionInput
         }
 
         BandwidthChecks.Spread(values, sample.EffectiveCount);
-        double step = options.RoundingUnit ?? 0;
+        // Without ties a lattice is either too fine to matter or an accident of few clusters.
+        bool ties = tied > LeastSquaresRule.TieWarning;
+        double step = options.RoundingUnit ?? (ties ? sample.RoundingUnit?.Step : null) ?? 0;
+        double lattice = options.RoundingUnit is null && ties && sample.HeapingUnit is HeapingUnit heaping ? Math.Max(step, heaping.Step) : step;
         double deviation = sample.StandardDeviation;
         if (!(deviation > 0 && double.IsFinite(deviation)))
         {
@@ -51,7 +54,7 @@ internal sealed partial class SelectionInput
             deviation = ScaledDeviation(values, masses, sample.EffectiveCount);
         }
 
-        return Make([.. values], [.. masses], [.. owns], sample.EffectiveCount, deviation, sample.InterquartileRange, tied, step, step, options);
+        return Make([.. values], [.. masses], [.. owns], sample.EffectiveCount, deviation, sample.InterquartileRange, tied, step, lattice, 0, options);
     }
 
     private static double ScaledDeviation(List<double> values, List<double> masses, double n)
@@ -69,7 +72,7 @@ internal sealed partial class SelectionInput
     }
 
     private static SelectionInput Make(
-        double[] values, double[] masses, double[] owns, double n, double deviation, double quartiles, double tied, double rounding, double lattice, BandwidthOptions options)
+        double[] values, double[] masses, double[] owns, double n, double deviation, double quartiles, double tied, double rounding, double lattice, double cell, BandwidthOptions options)
     {
         double unit = quartiles > 0 ? Math.Min(deviation, quartiles) : deviation;
         // A scale of rules, not of results: its power of two keeps the division exact.
@@ -88,6 +91,7 @@ internal sealed partial class SelectionInput
             TiedShare = tied,
             RoundingUnit = rounding / unit,
             LatticeStep = lattice / unit,
+            CellFloor = CellsPerBandwidth * cell / unit,
             Reflection = mirrored ? 2 : 1,
             Circle = lower && upper ? 2 * support.Length / unit : 0,
         };

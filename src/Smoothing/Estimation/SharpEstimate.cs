@@ -26,7 +26,7 @@ public sealed class SharpEstimate
         SharpBandwidth = sharpBandwidth;
         double finest = Math.Min(bandwidth, sharpBandwidth);
         EmpiricalSpectrum spectrum = EmpiricalSpectrum.Of(sample, finest, Math.Max(bandwidth, sharpBandwidth));
-        double[] multiplier = SharpFilter.Multiplier(spectrum, bandwidth, sharpBandwidth);
+        double[] multiplier = SharpFilter.Multiplier(spectrum, bandwidth, sharpBandwidth, LatticeStep(sample));
         int size = spectrum.SizeFor(finest / 16, multiplier.Length);
         _density = spectrum.Curve(multiplier, size);
         _spacing = spectrum.Length / size;
@@ -166,6 +166,10 @@ public sealed class SharpEstimate
 
         return new Curve(x, y);
     }
+
+    // Below 5 % ties a lattice is either too fine to matter or an accident of few clusters.
+    private static double LatticeStep(Sample sample) =>
+        sample.TiedShare > 0.05 ? Math.Max(sample.RoundingUnit?.Step ?? 0, sample.HeapingUnit?.Step ?? 0) : 0;
 
     private bool TryPlace(double x, out int node, out double fraction)
     {

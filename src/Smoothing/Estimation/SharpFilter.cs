@@ -8,8 +8,9 @@ internal static class SharpFilter
 
     /// <summary>
     /// A third each of exp(−h²t²/2), (1 + z)exp(−z) with z = h₄²t²/2, and the Wiener weight p/(p + (1 − p)/n), p = |φ_n|² exp(−h²t²); cut where nothing is left.
+    /// Beyond π/<paramref name="latticeStep"/> the spectrum of rounded values repeats itself, so the Wiener part ends there.
     /// </summary>
-    public static double[] Multiplier(EmpiricalSpectrum spectrum, double bandwidth, double sharpBandwidth)
+    public static double[] Multiplier(EmpiricalSpectrum spectrum, double bandwidth, double sharpBandwidth, double latticeStep = 0)
     {
         ReadOnlySpan<double> squared = spectrum.SquaredModulus;
         var weights = new double[squared.Length];
@@ -22,7 +23,7 @@ internal static class SharpFilter
             double debiased = (1 + z) * Math.Exp(-z);
             double p = Math.Min(1, squared[k] * plain * plain);
             double wiener = p / (p + ((1 - p) / spectrum.EffectiveCount));
-            weights[k] = (plain + debiased + (p > 0 ? wiener : 0)) / 3;
+            weights[k] = (plain + debiased + (p > 0 && t * latticeStep <= Math.PI ? wiener : 0)) / 3;
             end = weights[k] > Negligible ? k + 1 : end;
         }
 

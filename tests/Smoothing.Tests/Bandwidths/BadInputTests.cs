@@ -67,7 +67,7 @@ public class BadInputTests
         Assert.Throws<ArgumentException>(() => BandwidthRules.Automatic(sample, Kernel.Gaussian, new BandwidthOptions { SmallestBandwidth = 2, LargestBandwidth = 1 }));
         Assert.Throws<ArgumentOutOfRangeException>(() => BandwidthRules.Automatic(sample, Kernel.Gaussian, new BandwidthOptions { Derivative = 9 }));
         Assert.Throws<ArgumentOutOfRangeException>(() => BandwidthRules.Choose((BandwidthRule)99, sample, Kernel.Gaussian));
-        Assert.Throws<ArgumentNullException>(() => BandwidthRules.Automatic(null!, Kernel.Gaussian));
+        Assert.Throws<ArgumentNullException>(() => BandwidthRules.Automatic((Sample)null!, Kernel.Gaussian));
         Assert.Throws<ArgumentNullException>(() => BandwidthRules.Automatic(sample, null!));
     }
 
