@@ -82,7 +82,7 @@ internal sealed class BoundaryMoments
         return sum;
     }
 
-    /// <summary>∫ uˡ K up to <paramref name="u"/>: in closed form for the Gaussian and for polynomials on [−1, 1], by quadrature otherwise.</summary>
+    /// <summary>∫ uˡ K up to <paramref name="u"/>: in closed form for the Gaussian, the exponential and polynomials on [−1, 1], by quadrature otherwise.</summary>
     public static double Incomplete(Kernel kernel, int l, double u)
     {
         if (u > 0)
@@ -101,15 +101,44 @@ internal sealed class BoundaryMoments
             return l == 1 ? -phi : NormalLaw.Cumulative(u) - (u * phi);
         }
 
+        if (kernel.ExponentialRate > 0)
+        {
+            // ½ ∫ v^l e^v up to u, in units of 1/λ.
+            double v = kernel.ExponentialRate * u;
+            return Math.Exp(v) / 2 * (l == 1 ? v - 1 : (v * v) - (2 * v) + 2) / Math.Pow(kernel.ExponentialRate, l);
+        }
+
         return kernel.EdgePolynomial.IsEmpty ? ByQuadrature(kernel, l, u) : OfPolynomial(kernel.EdgePolynomial, l, u);
     }
 
     /// <summary>The same by quadrature, u ≤ 0: every kernel is smooth on the negative half of its support.</summary>
     public static double ByQuadrature(Kernel kernel, int l, double u)
     {
-        // ∫ v^l K = u^l C − l ∫ v^{l−1} C with C the distribution function: one power less, no far tail to cut off but the kernel's own.
-        double from = double.IsFinite(kernel.SupportRadius) ? -kernel.SupportRadius : u - (2 * ReachOf(kernel));
-        double integral = u <= from ? 0 : Quadrature.Integrate(v => Math.Pow(v, l - 1) * kernel.CumulativeCore(v), from, u);
+        // ∫ v^l K = u^l C − l ∫ v^{l−1} C with C the distribution function: a sum over panels no wider than the kernel's own unit, an eighth of it
+        // where K ends; the stretch left out has a share of C below 1e-17.
+        double from = double.IsFinite(kernel.SupportRadius) ? -kernel.SupportRadius : u - ReachOf(kernel);
+        if (u <= from)
+        {
+            return 0;
+        }
+
+        double widest = double.IsFinite(kernel.SupportRadius) ? kernel.SupportRadius * GaussRule.ShortStretch : 1;
+        int panels = (int)Math.Ceiling((u - from) / widest);
+        double width = (u - from) / panels;
+        Span<double> x = stackalloc double[GaussRule.Nodes];
+        Span<double> y = stackalloc double[GaussRule.Nodes];
+        double integral = 0;
+        for (int k = 0; k < panels; k++)
+        {
+            GaussRule.Place(from + (k * width), from + ((k + 1) * width), x);
+            for (int i = 0; i < x.Length; i++)
+            {
+                y[i] = (l == 1 ? 1 : x[i]) * kernel.CumulativeCore(x[i]);
+            }
+
+            integral += GaussRule.Sum(y, width);
+        }
+
         return (Math.Pow(u, l) * kernel.CumulativeCore(u)) - (l * integral);
     }
 
