@@ -27,10 +27,11 @@ public class TableCondenserTests
         // Eight moments at h = 16 δ: within 1e-12 of the peak of the sum over all values.
         CondensedSample eight = TableCondenser.Condense(connection, new ColumnSource { Table = "obs", Value = "x" }, new TableOptions { Bandwidth = 0.25 }).Sample;
         Assert.Equal(1 / 64.0, eight.CellWidth);
-        Density direct = Density.Of(Sample.Of(values), Kernel.Gaussian, 0.25);
+        Density direct = Density.Of(Sample.Of(values), Kernel.Gaussian, 0.25), fromCells = Density.Of(eight, Kernel.Gaussian, 0.25);
         for (double x = -6; x <= 6; x += 0.37)
         {
             Same.Close(direct.Value(x), CellCurve.Value(eight, x, 0.25), 0.3e-12);
+            Same.Close(direct.Value(x), fromCells.Value(x), 0.3e-12);
         }
     }
 
