@@ -120,6 +120,8 @@ internal static partial class RuleDispatch
             status = BandwidthStatus.RoundingFloor;
             notes.Add(input.CellFloor > 0.5 * input.RoundingUnit
                 ? "The cells limit the resolution: the rule asks for less than two cell widths; condense with narrower cells."
+                : input.HeapingFloor > 0.5 * input.RoundingUnit
+                ? Guard.Text($"Heaping on multiples of {input.LatticeStep * input.Unit:G6} limits the resolution: the rule asks for a bandwidth at which the heaps show.")
                 : Guard.Text($"Rounding limits the resolution: the rule asks for less than half the rounding step of {input.RoundingUnit * input.Unit:G6}."));
         }
 

@@ -62,7 +62,10 @@ internal sealed partial class SelectionInput
     public List<string> Notes { get; } = [];
 
     /// <summary>Half the coarser step: below it the ripple of the lattice shows (1.4 % at one half, 8.5 % at 0.4: 2 exp(−2π²h²/δ²)).</summary>
-    public double Floor => Math.Max(0.5 * RoundingUnit, CellFloor);
+    public double Floor => Math.Max(Math.Max(0.5 * RoundingUnit, HeapingFloor), CellFloor);
+
+    /// <summary>The bandwidth at which the ripple of the heaped share, 2 share exp(−2π²h²/δ²), is down to the same 1.4 %; 0 without heaping.</summary>
+    public double HeapingFloor { get; private init; }
 
     /// <summary>Two cell widths of a condensed sample, whose values stand at the means of their cells; 0 for a sample.</summary>
     public double CellFloor { get; private init; }

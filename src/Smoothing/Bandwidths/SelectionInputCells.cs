@@ -40,7 +40,7 @@ internal sealed partial class SelectionInput
         deviation = Math.Sqrt((deviation * deviation) + within);
         double step = options.RoundingUnit ?? 0;
         double quartiles = Quantile(values, masses, 0.75) - Quantile(values, masses, 0.25);
-        SelectionInput input = Make([.. values], [.. masses], owns, n, deviation, quartiles, double.NaN, step, step, width, options);
+        SelectionInput input = Make([.. values], [.. masses], owns, n, deviation, quartiles, double.NaN, step, step, 0, width, options);
         input.Notes.Add("Chosen from cells: ties and rounding can't be seen in them; say so with RoundingUnit if the values were rounded.");
         return input;
     }

@@ -46,7 +46,13 @@ internal sealed partial class SelectionInput
         // Without ties a lattice is either too fine to matter or an accident of few clusters.
         bool ties = tied > LeastSquaresRule.TieWarning;
         double step = options.RoundingUnit ?? (ties ? sample.RoundingUnit?.Step : null) ?? 0;
-        double lattice = options.RoundingUnit is null && ties && sample.HeapingUnit is HeapingUnit heaping ? Math.Max(step, heaping.Step) : step;
+        double lattice = step, heapingFloor = 0;
+        if (options.RoundingUnit is null && ties && sample.HeapingUnit is HeapingUnit heaping)
+        {
+            lattice = Math.Max(step, heaping.Step);
+            heapingFloor = heaping.Step * Math.Sqrt(Math.Max(0, Math.Log(2 * heaping.Excess / Ripple)) / (2 * Math.PI * Math.PI));
+        }
+
         double deviation = sample.StandardDeviation;
         if (!(deviation > 0 && double.IsFinite(deviation)))
         {
@@ -54,8 +60,11 @@ internal sealed partial class SelectionInput
             deviation = ScaledDeviation(values, masses, sample.EffectiveCount);
         }
 
-        return Make([.. values], [.. masses], [.. owns], sample.EffectiveCount, deviation, sample.InterquartileRange, tied, step, lattice, 0, options);
+        return Make([.. values], [.. masses], [.. owns], sample.EffectiveCount, deviation, sample.InterquartileRange, tied, step, lattice, heapingFloor, 0, options);
     }
+
+    /// <summary>2 exp(−2π²/4): the ripple that half a rounding step leaves.</summary>
+    private const double Ripple = 0.0144;
 
     private static double ScaledDeviation(List<double> values, List<double> masses, double n)
     {
@@ -72,7 +81,7 @@ internal sealed partial class SelectionInput
     }
 
     private static SelectionInput Make(
-        double[] values, double[] masses, double[] owns, double n, double deviation, double quartiles, double tied, double rounding, double lattice, double cell, BandwidthOptions options)
+        double[] values, double[] masses, double[] owns, double n, double deviation, double quartiles, double tied, double rounding, double lattice, double heapingFloor, double cell, BandwidthOptions options)
     {
         double unit = quartiles > 0 ? Math.Min(deviation, quartiles) : deviation;
         // A scale of rules, not of results: its power of two keeps the division exact.
@@ -91,6 +100,7 @@ internal sealed partial class SelectionInput
             TiedShare = tied,
             RoundingUnit = rounding / unit,
             LatticeStep = lattice / unit,
+            HeapingFloor = heapingFloor / unit,
             CellFloor = CellsPerBandwidth * cell / unit,
             Reflection = mirrored ? 2 : 1,
             Circle = lower && upper ? 2 * support.Length / unit : 0,

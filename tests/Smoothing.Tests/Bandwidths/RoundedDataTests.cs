@@ -37,6 +37,19 @@ public class RoundedDataTests
     }
 
     [Fact]
+    public void Automatic_MostValuesHeaped_StopsWhereTheHeapsWouldShow()
+    {
+        var stream = new RandomStream(58);
+        double[] x = [.. BadInputTests.Normal(10000, 59).Select(v => stream.NextUniform() < 0.6 ? Math.Round(v * 2) / 2 : v)];
+        BandwidthChoice choice = BandwidthRules.Automatic(Sample.Of(x), Kernel.Gaussian);
+        Assert.NotNull(choice.LatticeStep);
+        Near.Relative(0.5, choice.LatticeStep.Value, 1e-9);
+        // 2 · 0.6 exp(−2π²h²/0.25) = 1.44 % at h = 0.237, and the share is known to about 1 %.
+        Assert.InRange(choice.Floor, 0.23, 0.24);
+        Assert.True(choice.Value >= choice.Floor);
+    }
+
+    [Fact]
     public void LeastSquaresCrossValidation_TiedData_Warns()
     {
         double[] x = [.. BadInputTests.Normal(500, 53).Select(v => Math.Round(v, 1))];
