@@ -104,9 +104,7 @@ internal static class SelectorsBench
             Add(tallies, rule.ToString(), errors.Gaussian(choice.Value), oracle, choice.Status is BandwidthStatus.Replaced or BandwidthStatus.EndOfSearch);
         }
 
-        // R of (3 − u²)φ(u)/2 is 27/(32√π); 1.9 is the ratio of normal references at n = 1000, only the range of the search rests on it.
-        double fourth = BlockSpectrumRule.Find(input, 4, 27 / (32 * NormalLaw.SqrtPi), 1.9).Value * input.Unit;
-        fourth = Math.Max(fourth, RuleDispatch.HigherOrderFloor * input.Floor * input.Unit);
+        double fourth = RuleDispatch.SharpBandwidth(input);
         Add(tallies, Fourth, errors.Gaussian(fourth, 4), oracle, false);
         Add(tallies, Sharp, errors.Sharp(automatic, fourth, input.LatticeStep * input.Unit), oracle, false);
     }

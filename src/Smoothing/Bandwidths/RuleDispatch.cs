@@ -28,6 +28,14 @@ internal static partial class RuleDispatch
         return Finish(outcome, input, kernel);
     }
 
+    /// <summary>The partner of the sharp estimate, in the unit of the data: the block spectrum for the fourth-order Gaussian-based kernel, not below its floor.</summary>
+    public static double SharpBandwidth(SelectionInput input)
+    {
+        // R of (3 − u²)φ(u)/2 is 27/(32√π); 1.9 is the ratio of normal references at n = 1000, only the range of the search rests on it.
+        double h = BlockSpectrumRule.Find(input, 4, 27 / (32 * NormalLaw.SqrtPi), 1.9).Value;
+        return Math.Max(h, HigherOrderFloor * input.Floor) * input.Unit;
+    }
+
     /// <summary>The bandwidth for the smoothed distribution function.</summary>
     public static BandwidthChoice ForDistribution(SelectionInput input, Kernel kernel) => Finish(DistributionRule.Find(input, Guard.Given(kernel)), input, kernel);
 

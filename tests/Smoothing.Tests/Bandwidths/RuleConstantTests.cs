@@ -86,6 +86,20 @@ public class RuleConstantTests
         Near.Relative(Math.Pow(4.0 / (3 * N), 0.2), Math.Exp(sum), tolerance, rule.ToString());
     }
 
+    [Fact]
+    public void SharpBandwidth_LargeNormalSamples_ApproachTheNormalOptimum()
+    {
+        // 1.0834 n^(−1/9) for the fourth-order Gaussian-based kernel (Wand & Schucany 1990, recomputed); geometric mean of eight samples, four standard errors.
+        const int N = 20000;
+        double sum = 0;
+        for (ulong seed = 61; seed < 69; seed++)
+        {
+            sum += Math.Log(RuleDispatch.SharpBandwidth(SelectionInput.Of(Sample.Of(BadInputTests.Normal(N, seed)), null))) / 8;
+        }
+
+        Near.Relative(1.0834457275896205 * Math.Pow(N, -1.0 / 9), Math.Exp(sum), 0.2);
+    }
+
     private static double Phi(double u) => Math.Exp(-0.5 * u * u) / Math.Sqrt(2 * Math.PI);
 
     private static double Square(double v) => v * v;
