@@ -13,12 +13,6 @@ public abstract partial class Kernel
     {
     }
 
-    /// <summary>Epanechnikov: ¾(1 − u²) on [−1, 1]; the smallest asymptotic error of its order. Source: Epanechnikov (1969).</summary>
-    public static Kernel Epanechnikov { get; } = new EpanechnikovKernel();
-
-    /// <summary>Gaussian: exp(−u²/2)/√(2π) on the whole line.</summary>
-    public static Kernel Gaussian { get; } = new GaussianKernel();
-
     /// <summary>The kernel's name, a term of the trade.</summary>
     public abstract string Name { get; }
 
@@ -77,9 +71,12 @@ public abstract partial class Kernel
         }
     }
 
-    /// <summary>How many observations the best kernel of the order needs for the error that this one reaches with 1: a ratio of sample sizes, 1 is best.</summary>
-    /// <remarks>For order 2: {3/(5√5)}/{√μ₂ R(K)}. Source: Silverman (1986), eq. 3.26.</remarks>
-    public abstract double Efficiency { get; }
+    /// <summary>A ratio of sample sizes, 1 is best: how many observations the optimal polynomial kernel of the same order needs for the error that this kernel reaches with 1.</summary>
+    /// <remarks>
+    /// {R(K*) |μ_k(K*)|^(1/k)} / {R(K) |μ_k(K)|^(1/k)}, k = <see cref="Order"/>, K* = <c>PolynomialOfOrder(k)</c> (for k = 8 the kernel of the same
+    /// family). For k = 2 this is {3/(5√5)}/{√μ₂ R(K)}. Source: Silverman (1986), eq. 3.26; for order k from the minimum of the asymptotic error.
+    /// </remarks>
+    public double Efficiency => KernelConstants.BestSize(Order) / (Roughness() * Math.Pow(Math.Abs(Moment(Order)), 1.0 / Order));
 
     /// <summary>The name of the kernel.</summary>
     /// <returns><see cref="Name"/>.</returns>
