@@ -82,7 +82,7 @@ internal sealed class BoundaryMoments
         return sum;
     }
 
-    /// <summary>∫ uˡ K up to <paramref name="u"/>: in closed form for the Gaussian, the exponential and polynomials on [−1, 1], by quadrature otherwise.</summary>
+    /// <summary>∫ uˡ K up to <paramref name="u"/>: in closed form for the Gaussian, the exponential and polynomials on [−1, 1], the kernel's own otherwise.</summary>
     public static double Incomplete(Kernel kernel, int l, double u)
     {
         if (u > 0)
@@ -108,7 +108,7 @@ internal sealed class BoundaryMoments
             return Math.Exp(v) / 2 * (l == 1 ? v - 1 : (v * v) - (2 * v) + 2) / Math.Pow(kernel.ExponentialRate, l);
         }
 
-        return kernel.EdgePolynomial.IsEmpty ? ByQuadrature(kernel, l, u) : OfPolynomial(kernel.EdgePolynomial, l, u);
+        return kernel.EdgePolynomial.IsEmpty ? (u <= -kernel.SupportRadius ? 0 : kernel.IncompleteMomentCore(l, u)) : OfPolynomial(kernel.EdgePolynomial, l, u);
     }
 
     /// <summary>The same by quadrature, u ≤ 0: every kernel is smooth on the negative half of its support.</summary>

@@ -107,5 +107,17 @@ public abstract partial class Kernel
     }
 
     /// <summary>The radius, or a distance beyond which K and its low moments leave nothing of a double.</summary>
-    private protected virtual double FiniteRadius => SupportRadius;
+    private protected virtual double FiniteRadius
+    {
+        get
+        {
+            double reach = double.IsFinite(SupportRadius) ? SupportRadius : 8;
+            while (double.IsInfinity(SupportRadius) && reach < 1e6 && Math.Abs(CumulativeCore(-reach)) * Math.Pow(reach, 4) > 1e-18)
+            {
+                reach *= 2;
+            }
+
+            return reach;
+        }
+    }
 }

@@ -31,7 +31,6 @@ internal sealed class EdgeKernel(string name, double[] edge, Func<DoubleDouble, 
 
     public override double SupportRadius => 1;
 
-    public override double Efficiency => 1;
 
     internal override ReadOnlySpan<double> EdgePolynomial => edge;
 

@@ -39,7 +39,6 @@ internal sealed class TailKernel(
 
     public override double SupportRadius => radius;
 
-    public override double Efficiency => 1;
 
     internal override double ExponentialRate => rate;
 
