@@ -16,12 +16,9 @@ internal static class StudyNumbers
     /// <summary>The value to the place of the second digit of its error; the whole value (15 digits at most) when the error is 0.</summary>
     public static string Rounded(double value, double error) => Fixed(value, Decimals(error, value));
 
-    /// <summary>The two ends of an interval to the place of the second digit of its half-width; infinite ends as words.</summary>
-    public static string Range(Interval interval, string unit = "")
+    /// <summary>The two ends of an interval to the place of the second digit of the error; infinite ends as words.</summary>
+    public static string Range(Interval interval, double error, string unit = "")
     {
-        double error = double.IsFinite(interval.Length) ? interval.Length / 2
-            : double.IsFinite(interval.Lower) ? Math.Abs(interval.Lower) / 20
-            : Math.Abs(interval.Upper) / 20;
         int decimals = Decimals(error, Math.Max(Magnitude(interval.Lower), Magnitude(interval.Upper)));
         if (double.IsInfinity(interval.Upper))
         {

@@ -63,6 +63,10 @@ public sealed record BandwidthChoice
     /// <summary>What a reader should know, in sentences; empty when there is nothing to say.</summary>
     public IReadOnlyList<string> Notes { get; internal init; } = [];
 
+    /// <summary>A bandwidth of the caller's own.</summary>
+    internal static BandwidthChoice Given(double value, Kernel kernel, double effectiveCount) =>
+        new(value, BandwidthRule.Automatic, BandwidthStatus.Given, kernel) { EffectiveCount = effectiveCount };
+
     /// <summary>The number h.</summary>
     /// <param name="choice">A choice.</param>
     public static implicit operator double(BandwidthChoice choice) => Guard.Given(choice).Value;

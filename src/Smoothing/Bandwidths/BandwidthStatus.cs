@@ -20,4 +20,7 @@ public enum BandwidthStatus
 
     /// <summary>The search ended at its smallest or largest bandwidth without a root or minimum inside.</summary>
     EndOfSearch,
+
+    /// <summary>Given by the caller; no rule was asked.</summary>
+    Given,
 }

@@ -32,7 +32,7 @@ public sealed partial class Sample
         _roundingUnit = new Lazy<RoundingUnit?>(() => RoundingFinder.Find(this));
         _heapingUnit = new Lazy<HeapingUnit?>(() => HeapingFinder.Find(this));
         _atoms = new Lazy<AtomFinder>(() => new AtomFinder(this));
-        _lagOne = new Lazy<double>(() => SerialDependence.LagOne(_values));
+        _lagOne = new Lazy<double>(() => LagCorrelation.LagOne(_values));
     }
 
     /// <summary>Number of rows kept: neither missing nor of weight 0. At least 1. With counts as weights, n is <see cref="EffectiveCount"/>.</summary>

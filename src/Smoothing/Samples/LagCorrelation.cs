@@ -3,7 +3,7 @@ using System.Numerics.Tensors;
 namespace Smoothing.Samples;
 
 /// <summary>Dependence between neighbouring rows.</summary>
-internal static class SerialDependence
+internal static class LagCorrelation
 {
     /// <summary>The lag-1 autocorrelation, on values halved and scaled by a power of two so that nothing overflows.</summary>
     public static double LagOne(double[] values)

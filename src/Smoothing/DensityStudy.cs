@@ -1,0 +1,142 @@
+using Smoothing.Bandwidths;
+using Smoothing.Estimation;
+using Smoothing.Inference;
+using Smoothing.Numerics;
+using Smoothing.Samples;
+
+namespace Smoothing;
+
+/// <summary>The one door: data in, a complete answer out.</summary>
+/// <remarks>
+/// Checks the values, chooses the smoothing, draws the curve with its band, answers the questions in <see cref="StudyOptions"/>, and says how
+/// far each answer can be trusted. Immutable and safe to share between threads;  The same input and seed give the same report, byte for byte, in any culture and on any number of threads.
+/// An estimate informs a decision; where people can be hurt it replaces no standard, code or licensed judgement.
+/// </remarks>
+public sealed partial class DensityStudy
+{
+    private readonly Lazy<IReadOnlyList<Caution>> _cautions;
+    private readonly Lazy<ReportModel> _report;
+
+    private DensityStudy(Sample sample, StudyOptions options)
+    {
+        Options = options;
+        Sample = sample;
+        Name = TextCleaner.Name(options.Name.Length > 0 ? options.Name : sample.Name);
+        Unit = TextCleaner.Name(options.Unit.Length > 0 ? options.Unit : sample.Unit);
+        (Atoms, CurveSample) = StudyAtoms.TakeOut(sample);
+        CurveShare = 1 - Atoms.Sum(a => a.Share);
+        Bandwidth = StudySteps.Choose(CurveSample, options);
+        Density = Density.Of(CurveSample, options.Kernel, Bandwidth, new DensityOptions { Support = options.Support, Boundary = options.Boundary });
+        Picture = StudySteps.PictureRange(CurveSample, Bandwidth, options);
+        options.Cancellation.ThrowIfCancellationRequested();
+        options.Progress?.Report(0.2);
+        Curve = Tabulate();
+        Peaks = Density.Peaks();
+        options.Cancellation.ThrowIfCancellationRequested();
+        options.Progress?.Report(0.4);
+        SerialDependence dependence = StudySteps.Serial(options);
+        Limits = [.. options.Limits.Select(limit => new LimitAnswer(limit, Shares.Beyond(sample, limit, options.Level, dependence: dependence)))];
+        Quantiles = [.. options.Probabilities.Select(p => Inference.Quantiles.Of(sample, p, options.Level, dependence: dependence))];
+        options.Progress?.Report(1);
+        _cautions = new(() => StudyCautions.Of(this));
+        _report = new(() => StudyReport.Of(this));
+    }
+
+    /// <summary>Studies a column of values.</summary>
+    /// <param name="values">The measurements; NaN is missing and handled as <see cref="StudyOptions.Missing"/> says.</param>
+    /// <param name="options">What is asked; null for the defaults.</param>
+    /// <returns>The study.</returns>
+    /// <exception cref="ArgumentException">Values, weights or options are unusable; the message names the first fault and its remedy.</exception>
+    /// <exception cref="OperationCanceledException">The options' cancellation was asked for.</exception>
+    public static DensityStudy Of(ReadOnlySpan<double> values, StudyOptions? options = null)
+    {
+        options ??= new StudyOptions();
+        return Of(Sample.Of(values, new SampleOptions { Weights = options.Weights, WeightMeaning = options.WeightMeaning, Missing = options.Missing, Name = options.Name, Unit = options.Unit }), options);
+    }
+
+    /// <summary>Studies a sample; its own weights, name and unit hold unless the options give others.</summary>
+    /// <param name="sample">The checked values.</param>
+    /// <param name="options">What is asked; null for the defaults.</param>
+    /// <returns>The study.</returns>
+    /// <exception cref="ArgumentException">The options are unusable, or no rule can choose a bandwidth because all values are equal.</exception>
+    /// <exception cref="OperationCanceledException">The options' cancellation was asked for.</exception>
+    public static DensityStudy Of(Sample sample, StudyOptions? options = null)
+    {
+        Guard.Given(sample);
+        options ??= new StudyOptions();
+        StudySteps.Check(options);
+        return new DensityStudy(sample, options);
+    }
+
+    /// <summary>What was asked.</summary>
+    public StudyOptions Options { get; }
+
+    /// <summary>The values that were studied.</summary>
+    public Sample Sample { get; }
+
+    /// <summary>The values behind the curve: <see cref="Sample"/> without its atoms.</summary>
+    public Sample CurveSample { get; }
+
+    /// <summary>Name of the quantity, made safe to print; may be empty.</summary>
+    public string Name { get; }
+
+    /// <summary>Unit of the values, made safe to print; may be empty.</summary>
+    public string Unit { get; }
+
+    /// <summary>Values that hold a share of their own and were taken out of the curve; usually none.</summary>
+    public IReadOnlyList<Atom> Atoms { get; }
+
+    /// <summary>Share of the values that the curve describes: 1 less the shares of the atoms.</summary>
+    public double CurveShare { get; }
+
+    /// <summary>The bandwidth with the rule that chose it and its diagnostics.</summary>
+    public BandwidthChoice Bandwidth { get; }
+
+    /// <summary>The curve as a function: integral 1 over the values that are no atoms.</summary>
+    public Density Density { get; }
+
+    /// <summary>The stretch of the axis that the picture shows.</summary>
+    public Interval Picture { get; }
+
+    /// <summary>The curve at <see cref="StudyOptions.Points"/> places of the picture.</summary>
+    public Curve Curve { get; }
+
+    /// <summary>The peaks and valleys of the curve, left to right.</summary>
+    public PeakSummary Peaks { get; }
+
+    /// <summary>The share of values beyond each asked limit.</summary>
+    public IReadOnlyList<LimitAnswer> Limits { get; }
+
+    /// <summary>The asked quantiles.</summary>
+    public IReadOnlyList<QuantileEstimate> Quantiles { get; }
+
+    /// <summary>The warnings that apply, most important first; empty when none does.</summary>
+    public IReadOnlyList<Caution> Cautions => _cautions.Value;
+
+    /// <summary>One footnote from which the analysis can be repeated.</summary>
+    public string MethodSentence => _report.Value.Method;
+
+    /// <summary>The report as plain text, 80 columns at most.</summary>
+    /// <returns>Lines ended by a line feed.</returns>
+    public string ToText() => TextReport.Write(_report.Value);
+
+    /// <summary>The report as Markdown.</summary>
+    /// <returns>A document with one top heading.</returns>
+    public string ToMarkdown() => MarkdownReport.Write(_report.Value);
+
+    /// <summary>The report as one self-contained HTML page with an inline picture: no script, nothing fetched.</summary>
+    /// <returns>A complete page.</returns>
+    public string ToHtml() => HtmlReport.Write(_report.Value);
+
+    /// <summary>The picture alone, as an SVG element.</summary>
+    /// <returns>One <c>svg</c> element with a text alternative.</returns>
+    public string ToSvg() => SvgFigure.Draw(_report.Value.Figure!);
+
+    private Curve Tabulate()
+    {
+        double[] x = StudySteps.Grid(Picture, Options.Points);
+        var y = new double[x.Length];
+        Density.Values(x, y);
+        return new Curve(x, y);
+    }
+}

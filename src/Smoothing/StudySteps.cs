@@ -1,0 +1,92 @@
+using Smoothing.Bandwidths;
+using Smoothing.Inference;
+using Smoothing.Kernels;
+using Smoothing.Numerics;
+using Smoothing.Samples;
+
+namespace Smoothing;
+
+/// <summary>The single steps of a study, each a call on a module.</summary>
+internal static class StudySteps
+{
+    public static void Check(StudyOptions options)
+    {
+        Guard.Given(options.Kernel, nameof(options.Kernel));
+        Guard.Level(options.Level, nameof(options.Level));
+        Guard.InRange(options.Points, 51, 10_001, nameof(options.Points));
+        if (options.Bandwidth is double h)
+        {
+            Guard.Positive(h, "pass a width in the unit of the data, or leave it null and let a rule choose", nameof(options.Bandwidth));
+        }
+
+        for (int i = 0; i < options.Limits.Count; i++)
+        {
+            Guard.Finite(options.Limits[i], "a limit is a number in the unit of the data", Guard.Text($"Limits[{i}]"));
+        }
+
+        for (int i = 0; i < options.Probabilities.Count; i++)
+        {
+            Guard.Level(options.Probabilities[i], Guard.Text($"Probabilities[{i}]"));
+        }
+    }
+
+    public static BandwidthChoice Choose(Sample sample, StudyOptions options)
+    {
+        if (options.Bandwidth is double given)
+        {
+            return BandwidthChoice.Given(given, options.Kernel, sample.EffectiveCount);
+        }
+
+        return BandwidthRules.Choose(options.Rule, sample, options.Kernel, new BandwidthOptions { Support = options.Support });
+    }
+
+    public static SerialDependence Serial(StudyOptions options) => options.TimeOrdered ? SerialDependence.AllowFor : SerialDependence.Ignore;
+
+    /// <summary>The stretch that is drawn: all values and the foot of the curve, or the middle 99.6 % where a few far values would flatten the rest.</summary>
+    public static Interval PictureRange(Sample sample, double bandwidth, StudyOptions options)
+    {
+        // Beyond three standard deviations of the kernel the curve of one value is below 1.2 % of its height.
+        double reach = 3 * bandwidth * Spread(options.Kernel);
+        double low = sample.Minimum;
+        double high = sample.Maximum;
+        double innerLow = sample.Quantile(0.002);
+        double innerHigh = sample.Quantile(0.998);
+        double core = Math.Max(sample.Quantile(0.9) - sample.Quantile(0.1), reach);
+
+        // A side that reaches more than two cores past the 0.2 % quantile is cut there.
+        if (innerLow - low > 2 * core)
+        {
+            low = innerLow;
+        }
+
+        if (high - innerHigh > 2 * core)
+        {
+            high = innerHigh;
+        }
+
+        low -= reach;
+        high += reach;
+        if (options.Support is { } support)
+        {
+            low = Math.Max(low, support.Lower);
+            high = Math.Min(high, support.Upper);
+        }
+
+        // One value, or values so large that the reach drowns: a stretch of some width all the same.
+        return low < high ? new Interval(low, high) : new Interval(Math.BitDecrement(low), Math.BitIncrement(high));
+    }
+
+    public static double[] Grid(Interval range, int points)
+    {
+        var x = new double[points];
+        for (int i = 0; i < points; i++)
+        {
+            double t = (double)i / (points - 1);
+            x[i] = i == points - 1 ? range.Upper : ((1 - t) * range.Lower) + (t * range.Upper);
+        }
+
+        return x;
+    }
+
+    private static double Spread(Kernel kernel) => kernel.Order == 2 ? Math.Sqrt(kernel.Moment(2)) : 1;
+}
