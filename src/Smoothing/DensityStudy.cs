@@ -31,7 +31,7 @@ public sealed partial class DensityStudy
         options.Cancellation.ThrowIfCancellationRequested();
         options.Progress?.Report(0.2);
         Curve = Tabulate();
-        Peaks = Density.Peaks();
+        Peaks = StudyPeaks.Of(Density);
         options.Cancellation.ThrowIfCancellationRequested();
         options.Progress?.Report(0.4);
         SerialDependence dependence = StudySteps.Serial(options);
@@ -101,8 +101,8 @@ public sealed partial class DensityStudy
     /// <summary>The curve at <see cref="StudyOptions.Points"/> places of the picture.</summary>
     public Curve Curve { get; }
 
-    /// <summary>The peaks and valleys of the curve, left to right.</summary>
-    public PeakSummary Peaks { get; }
+    /// <summary>The peaks and valleys of the curve, left to right; null for a kernel with jumps, whose curve is a staircase.</summary>
+    public PeakSummary? Peaks { get; }
 
     /// <summary>The share of values beyond each asked limit.</summary>
     public IReadOnlyList<LimitAnswer> Limits { get; }

@@ -33,7 +33,7 @@ internal static class StudyFigure
     private static string Alternative(DensityStudy study)
     {
         IReadOnlyList<Peak> peaks = StudyPeaks.Named(study);
-        string shape = peaks.Count == 1
+        string shape = peaks.Count == 0 ? "steps" : peaks.Count == 1
             ? Guard.Text($"one hump, highest near {StudyPeaks.Place(study, peaks[0].Location)}")
             : Guard.Text($"{StudyNumbers.CountWord(peaks.Count)} humps, near {string.Join(" and ", peaks.Take(4).Select(p => StudyPeaks.Place(study, p.Location)))}{(peaks.Count > 4 ? " and further on" : "")}");
         string limits = string.Concat(study.Limits.Select(l => Guard.Text($"; {StudyNumbers.Percent(l.Beyond.Estimate, l.Beyond.Interval.Length / 2)} of the values lie beyond {StudyNumbers.WithUnit(StudyNumbers.AsGiven(l.Limit), study.Unit)}")));

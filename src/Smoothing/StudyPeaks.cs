@@ -12,16 +12,20 @@ internal static class StudyPeaks
     /// <summary>The peaks worth naming: at least 2 % as high as the highest, and standing out by as much.</summary>
     public static IReadOnlyList<Peak> Named(DensityStudy study)
     {
-        double highest = study.Peaks.Highest.Height;
-        return [.. study.Peaks.Peaks.Where(p => p.Height >= Visible * highest && p.Prominence >= Visible * highest)];
+        return study.Peaks is { } summary ? Named(summary) : [];
     }
 
     public static string Sentence(DensityStudy study)
     {
         IReadOnlyList<Peak> peaks = Named(study);
-        string place = study.Bandwidth > 0 ? Place(study, peaks[0].Location) : "";
+        if (peaks.Count == 0)
+        {
+            return Guard.Text($"The {study.Options.Kernel.Name} kernel jumps, so the curve is a staircase and no peaks are named. Take a smoother kernel for peaks.");
+        }
+
         if (peaks.Count == 1)
         {
+            string place = Place(study, peaks[0].Location);
             string at = peaks[0].AtLimit ? "The curve is highest at its limit, " : "The curve has one peak, at ";
             return Guard.Text($"{at}{place}.");
         }
@@ -37,9 +41,20 @@ internal static class StudyPeaks
     public static int CountAt(DensityStudy study, double bandwidth)
     {
         Density density = Density.Of(study.CurveSample, study.Options.Kernel, bandwidth, study.Density.Options);
-        PeakSummary summary = density.Peaks();
+        return Named(density.Peaks()).Length;
+    }
+
+    /// <summary>The peaks of a curve; null where the kernel jumps.</summary>
+    public static PeakSummary? Of(Density density)
+    {
+        double radius = density.Kernel.SupportRadius;
+        return double.IsFinite(radius) && density.Kernel.Value(radius) != 0 ? null : density.Peaks();
+    }
+
+    private static Peak[] Named(PeakSummary summary)
+    {
         double highest = summary.Highest.Height;
-        return summary.Peaks.Count(p => p.Height >= Visible * highest && p.Prominence >= Visible * highest);
+        return [.. summary.Peaks.Where(p => p.Height >= Visible * highest && p.Prominence >= Visible * highest)];
     }
 
     /// <summary>A place on the axis, to the digits that a tenth of the bandwidth supports.</summary>

@@ -29,6 +29,11 @@ internal static partial class StudyReport
     private static string Halved(DensityStudy study)
     {
         double h = study.Bandwidth;
+        if (study.Peaks is null)
+        {
+            return "Compare half and double smoothing before reading details.";
+        }
+
         double height = study.Peaks.Highest.Height;
         double half = Highest(study, h / 2);
         double twice = Highest(study, 2 * h);

@@ -49,11 +49,13 @@ internal static class StudySteps
         double reach = 3 * bandwidth * Spread(options.Kernel);
         double low = sample.Minimum;
         double high = sample.Maximum;
-        double innerLow = sample.Quantile(0.002);
-        double innerHigh = sample.Quantile(0.998);
+        ReadOnlySpan<double> sorted = sample.SortedValues;
+        int far = (int)Math.Ceiling(0.002 * (sorted.Length - 1));
+        double innerLow = sorted[far];
+        double innerHigh = sorted[sorted.Length - 1 - far];
         double core = Math.Max(sample.Quantile(0.9) - sample.Quantile(0.1), reach);
 
-        // A side that reaches more than two cores past the 0.2 % quantile is cut there.
+        // A side that reaches more than two cores past the outermost 0.2 % of the values is cut there.
         if (innerLow - low > 2 * core)
         {
             low = innerLow;

@@ -52,9 +52,9 @@ public static class Shares
     {
         Guard.Number(from);
         Guard.Number(to);
-        if (!(from < to))
+        if (!(from <= to))
         {
-            throw new ArgumentException(Guard.Text($"from must lie below to, but from is {from} and to is {to}: exchange them."), nameof(from));
+            throw new ArgumentException(Guard.Text($"from must not exceed to, but from is {from} and to is {to}: exchange them."), nameof(from));
         }
 
         return Of(sample, x => x >= from && x <= to, level, dependence, [from, to]);

@@ -17,7 +17,7 @@ public class DensityStudyTests
     public void Of_OldFaithful_FindsTwoPeaksAndTheCountedShare()
     {
         DensityStudy study = DensityStudy.Of(s_eruptions, new StudyOptions { Name = "Eruption length", Unit = "min", Limits = [4.5] });
-        Assert.Equal(2, study.Peaks.Peaks.Count(p => p.Prominence > 0.02 * study.Peaks.Highest.Height));
+        Assert.Equal(2, study.Peaks!.Peaks.Count(p => p.Prominence > 0.02 * study.Peaks.Highest.Height));
         Assert.Equal(s_eruptions.Count(v => v > 4.5) / 272.0, study.Limits[0].Beyond.Estimate, 14);
         string text = study.ToText();
         Assert.Contains("two peaks", text, StringComparison.Ordinal);
@@ -124,7 +124,7 @@ public class DensityStudyTests
         DensityStudy study = DensityStudy.Of(s_eruptions);
         Assert.Contains("class=\"sm-c\"", study.ToSvg(), StringComparison.Ordinal);
         Assert.Equal(401, study.Curve.X.Count);
-        Near.Absolute(study.Peaks.Highest.Height, study.Curve.Y.Max(), 0.01 * study.Peaks.Highest.Height);
+        Near.Absolute(study.Peaks!.Highest.Height, study.Curve.Y.Max(), 0.01 * study.Peaks.Highest.Height);
     }
 
     [Theory]
