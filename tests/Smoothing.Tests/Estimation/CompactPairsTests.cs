@@ -1,4 +1,5 @@
 using Smoothing.Estimation;
+using Smoothing.Kernels;
 using Smoothing.Samples;
 using Smoothing.Tests.Support;
 
@@ -108,6 +109,30 @@ public class CompactPairsTests
                 double expected = sum * (2 - u) / steps / 3;
                 Near.Relative(expected, new CompactPairs(Sample.Of([0, u * 0.5]), kernel).SelfConvolutions(0.5), 1e-10, $"{kernel.Name} {u}");
             }
+        }
+    }
+
+    // ∫f̂² by Simpson's rule over the estimate itself, the mean of the leave-one-out values one by one.
+    [Fact]
+    public void LeastSquares_OldFaithful_MatchesTheDefinition()
+    {
+        Sample sample = Sample.Of(TestData.Load("faithful_eruptions_272"));
+        var pairs = new CompactPairs(sample, Kernel.Epanechnikov);
+        foreach (double width in new[] { 0.2, 0.5 })
+        {
+            Density density = Density.Of(sample, Kernel.Epanechnikov, width);
+            const int steps = 20_000;
+            double from = sample.Minimum - width, to = sample.Maximum + width, integral = 0;
+            for (int k = 0; k <= steps; k++)
+            {
+                double f = density.Value(from + ((to - from) * k / steps));
+                integral += (k == 0 || k == steps ? 1 : k % 2 == 1 ? 4 : 2) * f * f;
+            }
+
+            integral *= (to - from) / steps / 3;
+            var left = new double[sample.Count];
+            pairs.LeaveOneOut(width, left);
+            Near.Relative(integral - (2 * left.Average()), pairs.LeastSquares(width), 1e-6);
         }
     }
 

@@ -89,40 +89,17 @@ internal sealed unsafe partial class CompactCells
             int strip = Math.Min(Strip, count - start);
             Classify(values + start, strip, cells);
             double* mass = weights == null ? null : weights + start;
-            if (_side == 4)
-            {
-                AddLow(values + start, mass, strip, cells, records);
-            }
-            else
-            {
-                AddHigh(values + start, mass, strip, cells, records);
-            }
 
             // A strip is no longer than the counters: each runs over at most once in it.
-            int full = Count(states, cells, strip);
+            int full = _side == 4
+                ? AddLow(values + start, mass, strip, cells, records, states)
+                : AddHigh(values + start, mass, strip, cells, records, states);
             for (int i = 0; i < full; i++)
             {
                 long k = cells[i];
                 states[k] = Carry(records + (2 * _side * k), states[k]) + (states[k] & (CarryAfter - 1));
             }
         }
-    }
-
-    // Counts the strip's values in their cells; leaves the cells that became full at the front of the list.
-    [MethodImpl(MethodImplOptions.AggressiveOptimization)]
-    private static int Count(int* states, long* cells, int count)
-    {
-        int full = 0;
-        for (int i = 0; i < count; i++)
-        {
-            long k = cells[i];
-            int state = states[k] + 1;
-            states[k] = state;
-            cells[full] = k;
-            full += (state & (CarryAfter - 1)) == 0 ? 1 : 0;
-        }
-
-        return full;
     }
 
     [MethodImpl(MethodImplOptions.AggressiveOptimization)]
@@ -196,9 +173,9 @@ internal sealed unsafe partial class CompactCells
     [MethodImpl(MethodImplOptions.AggressiveInlining)]
     private static int AtLeast(double x, double cut) => 1 + (int)(BitConverter.DoubleToInt64Bits(x - cut) >> 63);
 
-    // Degrees up to 3: one vector (1, b, b², b³) from either end.
+    // Degrees up to 3: one vector (1, b, b², b³) from either end. Leaves the cells whose counters ran over at the front of the list.
     [MethodImpl(MethodImplOptions.AggressiveOptimization)]
-    private void AddLow(double* values, double* weights, int count, long* cells, double* records)
+    private int AddLow(double* values, double* weights, int count, long* cells, double* records, int* states)
     {
         Vector256<double> odd = Vector256.Create(0L, -1, 0, -1).AsDouble();
         Vector256<double> high = Vector256.Create(0L, 0, -1, -1).AsDouble();
@@ -206,6 +183,7 @@ internal sealed unsafe partial class CompactCells
         double* cut = Breakpoints;
         double* uppers = Uppers;
         double inverse = _inverse;
+        int full = 0;
         for (int i = 0; i < count; i++)
         {
             long k = cells[i];
@@ -224,12 +202,18 @@ internal sealed unsafe partial class CompactCells
             double* record = records + (8 * k);
             (Vector256.Load(record) + up).Store(record);
             (Vector256.Load(record + 4) + down).Store(record + 4);
+            int state = states[k] + 1;
+            states[k] = state;
+            cells[full] = k;
+            full += (state & (CarryAfter - 1)) == 0 ? 1 : 0;
         }
+
+        return full;
     }
 
     // Higher degrees: further vectors, each b⁴ times the one before.
     [MethodImpl(MethodImplOptions.AggressiveOptimization)]
-    private void AddHigh(double* values, double* weights, int count, long* cells, double* records)
+    private int AddHigh(double* values, double* weights, int count, long* cells, double* records, int* states)
     {
         Vector256<double> odd = Vector256.Create(0L, -1, 0, -1).AsDouble();
         Vector256<double> high = Vector256.Create(0L, 0, -1, -1).AsDouble();
@@ -238,6 +222,7 @@ internal sealed unsafe partial class CompactCells
         double* uppers = Uppers;
         double inverse = _inverse;
         int side = _side;
+        int full = 0;
         for (int i = 0; i < count; i++)
         {
             long k = cells[i];
@@ -267,6 +252,13 @@ internal sealed unsafe partial class CompactCells
                 (Vector256.Load(record + t) + up).Store(record + t);
                 (Vector256.Load(record + side + t) + down).Store(record + side + t);
             }
+
+            int state = states[k] + 1;
+            states[k] = state;
+            cells[full] = k;
+            full += (state & (CarryAfter - 1)) == 0 ? 1 : 0;
         }
+
+        return full;
     }
 }

@@ -92,6 +92,18 @@ internal sealed unsafe class CompactPairs(Sample sample, Kernel kernel)
         return Pairs(Blocks(ref _wideBlocks, 2 * bandwidth, degree), polynomial, degree);
     }
 
+    /// <summary>∫f̂² − 2·(mean of the leave-one-out values), the least-squares criterion, for values of equal weight.</summary>
+    /// <remarks>
+    /// n⁻²h⁻¹{n R(K) + 2 Σ_{j&lt;i} (K∗K)} − 4{n(n − 1)h}⁻¹ Σ_{j&lt;i} K; needs <see cref="HasSelfConvolution"/> and two values.
+    /// Source: Rudemo (1982), Bowman (1984).
+    /// </remarks>
+    public double LeastSquares(double bandwidth)
+    {
+        double n = sample.Count;
+        double squares = ((n * kernel.RoughnessCore(0)) + (2 * SelfConvolutions(bandwidth))) / (n * n * bandwidth);
+        return squares - (4 * Kernels(bandwidth) / (n * (n - 1) * bandwidth));
+    }
+
     private CompactBlocks Blocks(ref CompactBlocks? kept, double width, int degree)
     {
         if (kept is null)
