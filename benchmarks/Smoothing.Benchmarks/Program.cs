@@ -9,6 +9,7 @@ switch (command)
     case "limits": return Smoothing.Benchmarks.Estimation.LimitsBench.Run(args[1..]);
     case "selectors": return Smoothing.Benchmarks.SelectorsBench.Run(args[1..]);
     case "sql": return Smoothing.Benchmarks.Sql.SqlBench.Run(args[1..]);
+    case "kernels": return Smoothing.Benchmarks.Kernels.KernelsDocument.Run();
     default:
         BenchmarkSwitcher.FromAssembly(typeof(Program).Assembly).Run(args);
         return 0;

@@ -11,7 +11,7 @@ public class DensityTabulateTests
 {
     private static readonly double[] s_eruptions = TestData.Load("faithful_eruptions_272");
 
-    private static readonly Kernel[] s_kernels = [Kernel.Gaussian, Kernel.Epanechnikov];
+    private static readonly Kernel[] s_kernels = [.. Kernel.Standard];
 
     public static TheoryData<string> Smooth => Names(1);
 
@@ -55,7 +55,7 @@ public class DensityTabulateTests
             Assert.True(error <= 1.001 * step * step / 8 * largest / (bandwidth * bandwidth * bandwidth), $"{name}: error {error:E2} at step {step:G3}");
             if (previous > 0)
             {
-                Assert.InRange(previous / error, 2.8, 5.6); // 4 on average over node offsets
+                Assert.InRange(previous / error, 2.5, 6.5); // 4 on average over node offsets; the triweight's curvature changes fastest
             }
 
             previous = error;
@@ -73,7 +73,9 @@ public class DensityTabulateTests
         foreach (int refinement in new[] { 1, 2, 4, 8 })
         {
             (double error, double step) = WorstError(sample, kernel, bandwidth, refinement);
-            Assert.InRange(error, 1e-9, 1.001 * step / 2 * largest / (bandwidth * bandwidth));
+            // The triangular kernel is linear between nodes that h is a multiple of: nothing is lost there.
+            double least = name == "Triangular" ? 0 : 1e-9;
+            Assert.InRange(error, least, 1.001 * step / 2 * largest / (bandwidth * bandwidth));
         }
     }
 
@@ -109,6 +111,33 @@ public class DensityTabulateTests
             Curve curve = Density.Of(sample, kernel, bandwidth).Tabulate(-26, 34, points);
             Near.Absolute(1, curve.Y.Sum() * (curve.X[1] - curve.X[0]), 1e-9);
             Assert.True(curve.Y.All(y => y >= 0));
+        }
+    }
+
+    // A jump leaves errors of the size of the jump at single nodes; in the integral the error falls with the step: at most δ/2 times the variation, 2·(1/2h) a value.
+    [Fact]
+    public void TryFill_Uniform_StaysInsideTheBoundInTheIntegral()
+    {
+        Sample sample = Sample.Of(s_eruptions);
+        double previous = double.PositiveInfinity;
+        foreach (int refinement in new[] { 1, 4, 16 })
+        {
+            const int points = 105;
+            var y = new double[points];
+            Assert.True(BinnedTable.TryFill(sample, Kernel.Uniform, 0.3, -0.4, 7.4, refinement, y));
+            Density density = Density.Of(sample, Kernel.Uniform, 0.3);
+            double asked = 7.8 / (points - 1);
+            double step = asked / refinement;
+            double integral = 0;
+            for (int j = 0; j < points; j++)
+            {
+                integral += Math.Abs(y[j] - density.Value(-0.4 + (j * asked))) * asked;
+            }
+
+            // The asked nodes sample the integrand: its variation 1/h over a node spacing is what the sum can miss.
+            Assert.True(integral <= (step / 2 / 0.3) + (asked / 0.3 / 4), $"{integral} at step {step}");
+            Assert.True(integral < previous, $"{integral} after {previous}");
+            previous = integral;
         }
     }
 

@@ -132,6 +132,33 @@ public class KernelTests
         Assert.True(Math.Abs(kernel.Moment(kernel.Order)) > 1e-4);
     }
 
+    // Closed forms of the self-convolutions, multiplied out by hand; to 1e-14 of the value at 0.
+    [Fact]
+    public void SelfConvolution_ClosedForms_AgreeTo1e14()
+    {
+        for (double u = 0; u < 2.2; u += 0.0731)
+        {
+            double t = Math.Max(2 - u, 0);
+            Near.Absolute(t / 4, Kernel.Uniform.SelfConvolution(u), 0.5e-14);
+            Near.Absolute(3.0 / 160 * t * t * t * ((u * u) + (6 * u) + 4), Kernel.Epanechnikov.SelfConvolution(u), 0.6e-14);
+            Near.Absolute(5.0 / 3584 * Math.Pow(t, 5) * (16 + (40 * u) + (36 * u * u) + (10 * u * u * u) + Math.Pow(u, 4)), Kernel.Biweight.SelfConvolution(-u), 0.7e-14);
+            Near.Absolute(Math.Exp(-u * u / 4) / Math.Sqrt(4 * Math.PI), Kernel.Gaussian.SelfConvolution(u), 0.28e-14);
+            Near.Absolute((1 + u) * Math.Exp(-u) / 4, Kernel.Laplace.SelfConvolution(u), 0.25e-14);
+        }
+    }
+
+    // Transforms: sinc for the uniform, its square for the triangular kernel, 3(sin t − t cos t)/t³ for Epanechnikov: common tables.
+    [Fact]
+    public void FourierTransform_ClosedForms_AgreeTo1e14()
+    {
+        foreach (double t in new[] { 0.8, 3.3, 11.0, 23.0, 25.0, 70.0, 500.0 })
+        {
+            Near.Absolute(Math.Sin(t) / t, Kernel.Uniform.FourierTransform(t), 1e-14);
+            Near.Absolute(Math.Pow(Math.Sin(t / 2) / (t / 2), 2), Kernel.Triangular.FourierTransform(t), 1e-14);
+            Near.Absolute(3 * (Math.Sin(t) - (t * Math.Cos(t))) / (t * t * t), Kernel.Epanechnikov.FourierTransform(t), 1e-14);
+        }
+    }
+
     // Parseval: R(K) = (1/π) ∫₀^∞ κ². Only for transforms that die off within reach of a plain sum.
     [Theory]
     [InlineData("Gaussian", 12)]
