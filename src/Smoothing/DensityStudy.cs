@@ -128,6 +128,14 @@ public sealed partial class DensityStudy
     /// <returns>A complete page.</returns>
     public string ToHtml() => HtmlReport.Write(_report.Value);
 
+    /// <summary>The numbers of the report as JSON: schema in <c>docs/report-schema.md</c>, read back by <see cref="StudyDocument.FromJson"/>. NaN never appears.</summary>
+    /// <returns>One indented document.</returns>
+    public string ToJson() => ToDocument().ToJson();
+
+    /// <summary>The numbers of the report as an object.</summary>
+    /// <returns>What <see cref="ToJson"/> writes.</returns>
+    public StudyDocument ToDocument() => StudyDocuments.Of(this);
+
     /// <summary>The picture alone, as an SVG element.</summary>
     /// <returns>One <c>svg</c> element with a text alternative.</returns>
     public string ToSvg() => SvgFigure.Draw(_report.Value.Figure!);

@@ -93,5 +93,5 @@ internal static class HtmlReport
         html.Append("</tbody>\n</table></div>\n");
     }
 
-    private static string Text(string text) => WebUtility.HtmlEncode(TextCleaner.Visible(text));
+    private static string Text(string text) => WebUtility.HtmlEncode(TextCleaner.Visible(text)).Replace(" %", "&#160;%", StringComparison.Ordinal);
 }

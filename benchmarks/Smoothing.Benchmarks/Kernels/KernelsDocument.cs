@@ -70,7 +70,7 @@ internal static class KernelsDocument
             for (int i = 0; i <= 288; i++)
             {
                 double x = -3.2 + (6.4 * i / 288);
-                path.Append(i == 0 ? 'M' : 'L').Append(F(left + (144.0 * i / 288))).Append(' ').Append(F(top + 126 - (180 * kernel.Value(x / scale) / scale)));
+                path.Append(i == 0 ? 'M' : 'L').Append(F(left + (144.0 * i / 288))).Append(' ').Append(F(top + 126 - (118 * kernel.Value(x / scale) / scale)));
             }
 
             svg.Append("<text x=\"").Append(F(left)).Append("\" y=\"").Append(F(top + 14)).Append("\">").Append(kernel.Name).Append("</text>");

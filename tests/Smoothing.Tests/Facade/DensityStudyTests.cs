@@ -171,5 +171,40 @@ public class DensityStudyTests
         }
     }
 
-    private static string Everything(DensityStudy study) => study.ToText() + study.ToMarkdown() + study.ToHtml();
+    [Fact]
+    public void ToJson_RoundTrip_GivesTheSameDocumentAndNoNaN()
+    {
+        DensityStudy study = DensityStudy.Of(s_eruptions, new StudyOptions { Name = "<script>\"", Unit = "min", Limits = [4.5], Probabilities = [0.5, 0.999] });
+        string json = study.ToJson();
+        StudyDocument back = StudyDocument.FromJson(json);
+        Assert.Equal(json, back.ToJson());
+        Assert.DoesNotContain("NaN", json, StringComparison.Ordinal);
+        Assert.DoesNotContain("Infinity", json, StringComparison.Ordinal);
+        Assert.Null(back.Quantiles[1].Interval.Upper);
+        Assert.Equal(study.Bandwidth.Value, back.Smoothing.Bandwidth);
+        Assert.Equal(study.Curve.Y, back.Curve.Density);
+        Assert.Equal(272, back.Data.Count);
+    }
+
+    [Theory]
+    [InlineData("")]
+    [InlineData("null")]
+    [InlineData("[]")]
+    [InlineData("{}")]
+    [InlineData("{\"schemaVersion\":2}")]
+    [InlineData("{\"schemaVersion\":1,\"curve\":{\"x\":[1],\"density\":[]}}")]
+    [InlineData("{\"schemaVersion\":1,\"level\":\"NaN\"}")]
+    public void FromJson_UnusableText_IsAnArgumentError(string json) => Assert.ThrowsAny<ArgumentException>(() => StudyDocument.FromJson(json));
+
+    [Fact]
+    public void FromJson_CutAnywhere_IsAnArgumentErrorOrTheWhole()
+    {
+        string json = DensityStudy.Of(s_waiting, new StudyOptions { Points = 51 }).ToJson();
+        for (int length = 0; length < json.Length - 1; length += 97)
+        {
+            Assert.ThrowsAny<ArgumentException>(() => StudyDocument.FromJson(json[..length]));
+        }
+    }
+
+    private static string Everything(DensityStudy study) => study.ToText() + study.ToMarkdown() + study.ToHtml() + study.ToJson();
 }
