@@ -124,7 +124,7 @@ internal static class StudyCautions
         if (outside > 0)
         {
             Sample sample = study.CurveSample;
-            cautions.Add(new(CautionKind.OutsidePicture, Guard.Text($"{StudyNumbers.CountWord(outside)} {(outside == 1 ? "value lies" : "values lie")} outside the picture, which would be flat otherwise (range {StudyNumbers.AsGiven(sample.Minimum)} to {StudyNumbers.WithUnit(StudyNumbers.AsGiven(sample.Maximum), study.Unit)}). All numbers count them.")));
+            cautions.Add(new(CautionKind.OutsidePicture, Guard.Text($"{(outside == 1 ? "One value lies" : StudyNumbers.Count(outside) + " values lie")} outside the picture, which would be flat otherwise (range {StudyNumbers.AsGiven(sample.Minimum)} to {StudyNumbers.WithUnit(StudyNumbers.AsGiven(sample.Maximum), study.Unit)}). All numbers count them.")));
         }
     }
 }

@@ -32,7 +32,7 @@ internal static class StudyFigure
 
     private static string Alternative(DensityStudy study)
     {
-        IReadOnlyList<Peak> peaks = StudyPeaks.Named(study);
+        IReadOnlyList<Peak> peaks = [.. StudyPeaks.Named(study).Where(p => study.Picture.Contains(p.Location))];
         string shape = peaks.Count == 0 ? "steps" : peaks.Count == 1
             ? Guard.Text($"one hump, highest near {StudyPeaks.Place(study, peaks[0].Location)}")
             : Guard.Text($"{StudyNumbers.CountWord(peaks.Count)} humps, near {string.Join(" and ", peaks.Take(4).Select(p => StudyPeaks.Place(study, p.Location)))}{(peaks.Count > 4 ? " and further on" : "")}");

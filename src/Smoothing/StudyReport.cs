@@ -43,9 +43,9 @@ internal static partial class StudyReport
         if (study.Quantiles.Count > 0)
         {
             blocks.Add(QuantileTable(study));
-            foreach (string note in study.Quantiles.SelectMany(q => q.Notes).Distinct())
+            foreach (QuantileEstimate quantile in study.Quantiles.Where(q => q.Notes.Count > 0))
             {
-                blocks.Add(new ReportBlock.Paragraph(note));
+                blocks.Add(new ReportBlock.Paragraph(Guard.Text($"{StudyNumbers.AsGiven(Math.Round(100 * quantile.Probability, 10))} % quantile: {string.Join(' ', quantile.Notes)}")));
             }
         }
 

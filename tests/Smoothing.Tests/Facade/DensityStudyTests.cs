@@ -142,7 +142,7 @@ public class DensityStudyTests
     {
         DensityStudy study = DensityStudy.Of([.. s_eruptions, 1e9]);
         Assert.InRange(study.Picture.Upper, 5, 20);
-        Assert.Contains("one value lies outside the picture", study.Cautions.Single(c => c.Kind == CautionKind.OutsidePicture).Text, StringComparison.Ordinal);
+        Assert.Contains("One value lies outside the picture", study.Cautions.Single(c => c.Kind == CautionKind.OutsidePicture).Text, StringComparison.Ordinal);
     }
 
     [Fact]
