@@ -110,7 +110,7 @@ public sealed partial class ErrorTheory
     private List<double> Minima(Func<double, double> slope, long n, string what)
     {
         // From well below the smallest feature's own best h (jumps ask for n^(−1/2)) to where nothing is left of the shape.
-        bool closed = _exact is GaussianMixtureError;
+        bool closed = _exact is GaussianMixtureError or GaussianFamilyError;
         double low = 0.05 * Target.Finest * Math.Pow(n, Target.Breaks.Count > 0 ? -0.5 : -1 / 3.0);
         double high = 20 * Math.Max(Target.Widest, Target.Finest);
         double step = closed ? 1.05 : 1.3; // closed forms can afford a finer scan

@@ -27,9 +27,13 @@ public sealed partial class ErrorTheory
         DerivativeOrder = Guard.AtLeast(derivative, 0);
         target.RequireNoJump(derivative, Guard.Text($"The error of derivative {derivative}"));
         KernelRoughness = kernel.Roughness(derivative);
-        _exact = derivative == 0 && kernel.GaussianPolynomial.Length == 1 && target is NormalMixture mixture
-            ? new GaussianMixtureError(mixture)
-            : new QuadratureError(kernel, target, derivative);
+        _exact = (target as NormalMixture, kernel.GaussianPolynomial.Length) switch
+        {
+            (null, _) => new QuadratureError(kernel, target, derivative),
+            ({ } mixture, 0) => new MixtureKernelError(kernel, mixture, derivative),
+            ({ } mixture, 1) when derivative == 0 => new GaussianMixtureError(mixture),
+            ({ } mixture, _) => new GaussianFamilyError(kernel, mixture, derivative),
+        };
     }
 
     /// <summary>The kernel.</summary>
