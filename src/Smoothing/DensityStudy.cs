@@ -30,6 +30,8 @@ public sealed partial class DensityStudy
         Picture = StudySteps.PictureRange(CurveSample, Bandwidth, options);
         options.Cancellation.ThrowIfCancellationRequested();
         options.Progress?.Report(0.2);
+        Uncertainty = StudySteps.Trust(Density, Bandwidth, options);
+        Band = Uncertainty?.Band(Picture.Lower, Picture.Upper, options.Points);
         Curve = Tabulate();
         Peaks = StudyPeaks.Of(Density);
         options.Cancellation.ThrowIfCancellationRequested();
@@ -101,6 +103,12 @@ public sealed partial class DensityStudy
     /// <summary>The curve at <see cref="StudyOptions.Points"/> places of the picture.</summary>
     public Curve Curve { get; }
 
+    /// <summary>Bias statements, standard errors and intervals of the curve; null where fewer than three values, or values of one size only, carry it.</summary>
+    public Uncertainty? Uncertainty { get; }
+
+    /// <summary>The simultaneous band of the curve at the places of <see cref="Curve"/>; null where <see cref="Uncertainty"/> is.</summary>
+    public Band? Band { get; }
+
     /// <summary>The peaks and valleys of the curve, left to right; null for a kernel with jumps, whose curve is a staircase.</summary>
     public PeakSummary? Peaks { get; }
 
@@ -142,7 +150,7 @@ public sealed partial class DensityStudy
 
     private Curve Tabulate()
     {
-        double[] x = StudySteps.Grid(Picture, Options.Points);
+        double[] x = Band is null ? StudySteps.Grid(Picture, Options.Points) : [.. Band.X];
         var y = new double[x.Length];
         Density.Values(x, y);
         return new Curve(x, y);

@@ -34,6 +34,12 @@ internal static class StudyCautions
         Rounding(study, cautions);
         Ends(study, cautions);
         Smoothing(study, cautions);
+        if (study.Uncertainty is { Contradicted.Count: > 0 } trust)
+        {
+            string places = string.Join(", ", trust.Contradicted.Take(4).Select(c => Guard.Text($"{StudyPeaks.Place(study, c.Lower)} to {StudyPeaks.Place(study, c.Upper)}")));
+            cautions.Add(new(CautionKind.FineStructure, Guard.Text($"The data contradict the smooth curve at a finer scale from {places}: there may be something narrower than the smoothing shows, and the band is widened there.")));
+        }
+
         Order(study, cautions);
         Outside(study, cautions);
         return cautions.AsReadOnly();

@@ -72,6 +72,14 @@ public sealed record StudyDocument(
             throw new ArgumentException(Guard.Text($"curve.x has {document.Curve.X.Count} numbers but curve.density has {document.Curve.Density.Count}: they belong together."), nameof(json));
         }
 
+        foreach ((string name, IReadOnlyList<double>? list) in new[] { ("lower", document.Curve.Lower), ("upper", document.Curve.Upper), ("bias", document.Curve.Bias) })
+        {
+            if (list is not null && list.Count != document.Curve.X.Count)
+            {
+                throw new ArgumentException(Guard.Text($"curve.x has {document.Curve.X.Count} numbers but curve.{name} has {list.Count}: they belong together."), nameof(json));
+            }
+        }
+
         return document;
     }
 

@@ -28,12 +28,25 @@ internal static class StudyDocuments
                 study.Options.Support is { } support ? DocumentInterval.Of(support) : null),
             [.. study.Atoms.Select(a => Atom(study, a.Value))],
             new DocumentSmoothing(study.Options.Kernel.Name, study.Bandwidth, study.Bandwidth.Rule.ToString(), study.Bandwidth.Status.ToString(), study.Options.Boundary.ToString()),
-            new DocumentCurve(study.Curve.X, study.Curve.Y, study.CurveShare),
+            new DocumentCurve(study.Curve.X, study.Curve.Y, study.CurveShare, study.Band?.Lower, study.Band?.Upper, Bias(study)),
             [.. StudyPeaks.Named(study).Select(p => new DocumentPeak(p.Location, p.Height, p.Prominence, p.Mass))],
             [.. study.Limits.Select(l => new DocumentLimit(l.Limit, l.Beyond.Estimate, DocumentInterval.Of(l.Beyond.Interval)))],
             [.. study.Quantiles.Select(q => new DocumentQuantile(q.Probability, q.Estimate, DocumentInterval.Of(q.Interval)))],
             [.. study.Cautions.Select(c => new DocumentCaution(c.Kind.ToString(), c.Text))],
             study.MethodSentence);
+    }
+
+    private static double[]? Bias(DensityStudy study)
+    {
+        if (study.Uncertainty is not { } trust)
+        {
+            return null;
+        }
+
+        double[] x = [.. study.Curve.X];
+        var bias = new double[x.Length];
+        trust.Biases(x, bias);
+        return bias;
     }
 
     private static DocumentAtom Atom(DensityStudy study, double value)

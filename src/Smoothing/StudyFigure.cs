@@ -10,6 +10,9 @@ internal static class StudyFigure
     // More ticks than this would run into one grey bar: values are then counted into as many strips.
     private const int MostTicks = 240;
 
+    // Below this share of the highest point the curve hugs the axis, and a mark on it would say nothing.
+    private const double Foot = 0.03;
+
     public static FigureModel Of(DensityStudy study)
     {
         double share = study.CurveShare;
@@ -17,6 +20,10 @@ internal static class StudyFigure
         {
             X = study.Curve.X,
             Y = [.. study.Curve.Y.Select(y => y * share)],
+            Lower = study.Band is null ? [] : [.. study.Band.Lower.Select(y => y * share)],
+            Upper = study.Band is null ? [] : [.. study.Band.Upper.Select(y => y * share)],
+            BandWords = Guard.Text($"{StudyNumbers.AsGiven(Math.Round(100 * study.Options.Level, 10))} % band"),
+            Biased = Biased(study),
             Limits = [.. study.Limits.Select(l => (l.Limit, Limit(study, l)))],
             Peaks = [.. StudyPeaks.Named(study).Where(p => study.Picture.Contains(p.Location)).Select(p => (p.Location, p.Height * share, StudyPeaks.Place(study, p.Location)))],
             Atoms = [.. study.Atoms.Select(a => (a.Value, Guard.Text($"{StudyNumbers.AsGiven(a.Value)}: {100 * a.Share:F0} %")))],
@@ -25,6 +32,37 @@ internal static class StudyFigure
             Unit = study.Unit,
             Alternative = Alternative(study),
         };
+    }
+
+    // Stretches where the estimated bias is larger than half the width of the band.
+    private static List<(double From, double To)> Biased(DensityStudy study)
+    {
+        var stretches = new List<(double, double)>();
+        if (study.Band is not { } band || study.Uncertainty is not { } trust)
+        {
+            return stretches;
+        }
+
+        double[] x = [.. band.X];
+        var bias = new double[x.Length];
+        trust.Biases(x, bias);
+        double top = study.Curve.Y.Max();
+        int start = -1;
+        for (int i = 0; i <= x.Length; i++)
+        {
+            bool beyond = i < x.Length && study.Curve.Y[i] > Foot * top && Math.Abs(bias[i]) > (band.Upper[i] - band.Lower[i]) / 2;
+            if (beyond && start < 0)
+            {
+                start = i;
+            }
+            else if (!beyond && start >= 0)
+            {
+                stretches.Add((x[start], x[i - 1]));
+                start = -1;
+            }
+        }
+
+        return stretches;
     }
 
     private static string Limit(DensityStudy study, LimitAnswer answer) =>

@@ -20,8 +20,12 @@ internal static class StudyMethod
         string limits = study.Options.Support is { } support && study.Options.Boundary != BoundaryCorrection.None
             ? Guard.Text($", {Correction(study.Options.Boundary)} on {Range(support)}")
             : "";
-        return Guard.Text($"{study.Options.Kernel.Name} kernel estimate of n = {StudyNumbers.Count(study.Sample.Count)} values{weights}{missing}{atoms}{limits}; bandwidth h = {StudyNumbers.WithUnit(StudyNumbers.Significant(study.Bandwidth, 3), study.Unit)} ({Rule(study.Bandwidth)}); shares: exact binomial intervals, quantiles: order-statistic intervals, level {StudyNumbers.AsGiven(Math.Round(100 * study.Options.Level, 10))} %; Smoothing {Version}.");
+        return Guard.Text($"{study.Options.Kernel.Name} kernel estimate of n = {StudyNumbers.Count(study.Sample.Count)} values{weights}{missing}{atoms}{limits}; bandwidth h = {StudyNumbers.WithUnit(StudyNumbers.Significant(study.Bandwidth, 3), study.Unit)} ({Rule(study.Bandwidth)}){Band(study)}; shares: exact binomial intervals, quantiles: order-statistic intervals, level {StudyNumbers.AsGiven(Math.Round(100 * study.Options.Level, 10))} %; Smoothing {Version}.");
     }
+
+    private static string Band(DensityStudy study) => study.Band is { } band
+        ? Guard.Text($"; {StudyNumbers.AsGiven(Math.Round(100 * band.Level, 10))} % simultaneous band (debiased kernel, gamma limits, c = {band.CriticalValue:F2})")
+        : "";
 
     /// <summary>How the bandwidth came about, in words.</summary>
     public static string Rule(BandwidthChoice choice)

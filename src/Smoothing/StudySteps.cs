@@ -1,4 +1,5 @@
 using Smoothing.Bandwidths;
+using Smoothing.Estimation;
 using Smoothing.Inference;
 using Smoothing.Kernels;
 using Smoothing.Numerics;
@@ -39,6 +40,12 @@ internal static class StudySteps
 
         return BandwidthRules.Choose(options.Rule, sample, options.Kernel, new BandwidthOptions { Support = options.Support });
     }
+
+    /// <summary>Statements about the error; null where too few values carry the curve.</summary>
+    public static Uncertainty? Trust(Density density, BandwidthChoice choice, StudyOptions options) =>
+        density is { Kernel.Order: 2, Sample: { Count: >= 3 } sample } && sample.Minimum < sample.Maximum
+            ? Uncertainty.Of(density, new UncertaintyOptions { Level = options.Level, Choice = choice, Dependence = Serial(options) })
+            : null;
 
     public static SerialDependence Serial(StudyOptions options) => options.TimeOrdered ? SerialDependence.AllowFor : SerialDependence.Ignore;
 

@@ -161,12 +161,12 @@ internal static class SvgFigure
 
         if (figure.Biased.Count > 0)
         {
-            parts.Add(("<line class=\"sm-w\" x1=\"0\" x2=\"22\" y1=\"-4\" y2=\"-4\"/>", "flattened by smoothing"));
+            parts.Add(("<line class=\"sm-w\" x1=\"0\" x2=\"22\" y1=\"-4\" y2=\"-4\"/>", "bias beyond the band"));
         }
 
         for (int i = parts.Count - 1; i >= 0; i--)
         {
-            x -= 34 + (7.0 * parts[i].Words.Length);
+            x -= 40 + (7.3 * parts[i].Words.Length);
             svg.Append("<g transform=\"translate(").Append(N(x)).Append(' ').Append(N(y)).Append(")\">").Append(parts[i].Sample);
             Label(svg, 27, 0, "start", parts[i].Words);
             svg.Append("</g>");

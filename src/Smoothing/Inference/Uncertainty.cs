@@ -105,6 +105,26 @@ public sealed class Uncertainty
         return new BiasStatement(x, f, half * _pilot.Value.Derivative(x, 2), half * Math.Sqrt(variance));
     }
 
+    /// <summary>The estimated bias at many places.</summary>
+    /// <param name="x">Places, in the unit of the data, inside the support.</param>
+    /// <param name="destination">Receives one estimate a place, in 1/unit.</param>
+    /// <exception cref="ArgumentException">A place is not finite or outside the support, or the destination is too short.</exception>
+    public void Biases(ReadOnlySpan<double> x, Span<double> destination)
+    {
+        foreach (double place in x)
+        {
+            Inside(place);
+        }
+
+        Guard.Destination(x.Length, destination.Length);
+        _pilot.Value.Derivatives(x, 2, destination);
+        double half = _bandwidth * _bandwidth / 2;
+        for (int j = 0; j < x.Length; j++)
+        {
+            destination[j] *= half;
+        }
+    }
+
     /// <summary>Standard error of the drawn curve at a place, bias aside: √{(f R(K)/h − f²)/n}.</summary>
     /// <param name="x">Where, in the unit of the data, inside the support.</param>
     /// <returns>In 1/unit.</returns>
