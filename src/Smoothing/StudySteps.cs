@@ -33,17 +33,19 @@ internal static class StudySteps
 
     public static BandwidthChoice Choose(Sample sample, StudyOptions options)
     {
-        if (options.Bandwidth is double given)
-        {
-            return BandwidthChoice.Given(given, options.Kernel, sample.EffectiveCount);
-        }
+        BandwidthChoice choice = options.Bandwidth is double given
+            ? BandwidthChoice.Given(given, options.Kernel, sample.EffectiveCount)
+            : BandwidthRules.Choose(options.Rule, sample, options.Kernel, new BandwidthOptions { Support = options.Support });
 
-        return BandwidthRules.Choose(options.Rule, sample, options.Kernel, new BandwidthOptions { Support = options.Support });
+        // A curve's height is about 1/h: outside this range it is no number that a report could hold.
+        return choice.Value is > 1e-290 and < 1e290
+            ? choice
+            : throw new ArgumentException(Guard.Text($"The bandwidth is {choice.Value}, too far from 1 for a report: multiply the values by a power of ten."), nameof(options));
     }
 
     /// <summary>Statements about the error; null where too few values carry the curve.</summary>
     public static Uncertainty? Trust(Density density, BandwidthChoice choice, StudyOptions options) =>
-        density is { Kernel.Order: 2, Sample: { Count: >= 3 } sample } && sample.Minimum < sample.Maximum
+        density is { Kernel.Order: 2, Bandwidth: > 1e-60 and < 1e60, Sample: { Count: >= 3 } sample } && sample.Minimum < sample.Maximum
             ? Uncertainty.Of(density, new UncertaintyOptions { Level = options.Level, Choice = choice, Dependence = Serial(options) })
             : null;
 
@@ -73,8 +75,9 @@ internal static class StudySteps
             high = innerHigh;
         }
 
-        low -= reach;
-        high += reach;
+        // Beyond a quarter of the largest double the width of the picture itself would overflow.
+        low = Math.Max(low - reach, -double.MaxValue / 4);
+        high = Math.Min(high + reach, double.MaxValue / 4);
         if (options.Support is { } support)
         {
             low = Math.Max(low, support.Lower);

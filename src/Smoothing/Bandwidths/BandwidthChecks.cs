@@ -6,6 +6,8 @@ namespace Smoothing.Bandwidths;
 /// <summary>The checks in front of every rule.</summary>
 internal static class BandwidthChecks
 {
+    private const double LargestHalfSpan = 5e299;
+
     public static void Check(BandwidthOptions options)
     {
         Guard.InRange(options.Derivative, 0, 4, nameof(options.Derivative));
@@ -41,6 +43,14 @@ internal static class BandwidthChecks
             throw new ArgumentException(
                 Guard.Text($"A rule needs at least two different values with weight above zero, but there is only {values[0]}: no rule can choose a bandwidth; pass one as a number."),
                 nameof(values));
+        }
+
+        // Sums of squares of distances must stay inside the range of a double, with room for the powers that the rules take of them.
+        double half = (values.Max() / 2) - (values.Min() / 2);
+        if (!(half < LargestHalfSpan))
+        {
+            throw new ArgumentException(
+                Guard.Text($"The values span more than {2 * LargestHalfSpan}: divide them by a power of ten, or pass a bandwidth as a number."), nameof(values));
         }
 
         if (!(effectiveCount > 1))

@@ -21,6 +21,9 @@ public sealed class Uncertainty
     private const double PilotFactor = 0.887;
     private const double PilotPower = 4.0 / 45;
 
+    private const double SmallestBandwidth = 1e-60;
+    private const double LargestBandwidth = 1e60;
+
     private readonly Density _density;
     private readonly Sample _sample;
     private readonly UncertaintyOptions _options;
@@ -83,6 +86,12 @@ public sealed class Uncertainty
         if (sample.Count < 3 || sample.Minimum == sample.Maximum)
         {
             throw new ArgumentException(Guard.Text($"Nothing can be said about the error from {sample.Count} value(s) of {(sample.Minimum == sample.Maximum ? "one size" : "two sizes")}: at least three, not all equal, are needed."), nameof(density));
+        }
+
+        // The statements take powers of h up to the fifth, which must stay inside the range of a double.
+        if (!(density.Bandwidth is > SmallestBandwidth and < LargestBandwidth))
+        {
+            throw new ArgumentException(Guard.Text($"The bandwidth must lie between {SmallestBandwidth} and {LargestBandwidth} for statements about the error, but is {density.Bandwidth}: multiply the values by a power of ten."), nameof(density));
         }
 
         return density.Kernel.Order == 2

@@ -21,9 +21,16 @@ internal static class Roots
         }
 
         double scale = Math.Max(Math.Abs(lower), Math.Abs(upper));
-        if (Brent.TryFindRoot(f, lower, upper, relativeAccuracy * scale, 200, out double root))
+        try
         {
-            return root;
+            if (Brent.TryFindRoot(f, lower, upper, relativeAccuracy * scale, 200, out double root))
+            {
+                return root;
+            }
+        }
+        catch (ArithmeticException)
+        {
+            // f was NaN on the way (sums that underflow between two good ends): halving takes such a place for the upper side and goes on.
         }
 
         // Brent's bookkeeping gives up on steep steps; halving never does.
