@@ -107,11 +107,33 @@ public sealed partial class CondensedSample
             Require(double.IsFinite(SingleArray[i]) && (i == 0 || SingleArray[i - 1] < SingleArray[i]) && SingleWeightArray[i] > 0 && double.IsFinite(SingleWeightArray[i]), "rising single values of positive weight");
         }
 
+        CheckTotals();
         CondensingChecks.Limits(LimitArray);
         for (int i = 0; i < LimitArray.Length; i++)
         {
             Require(BelowArray[i] >= 0 && AtArray[i] >= 0 && BelowArray[i] + AtArray[i] <= TotalWeight * (1 + 1e-9), "possible counts at the limits");
         }
+    }
+
+    // Rounding: a total may have been added up in another order than here, so 1e-9 of it is allowed.
+    private void CheckTotals()
+    {
+        CompensatedSum weight = default;
+        for (int i = 0; i < CellArray.Length; i++)
+        {
+            weight.Add(SumArray[i * Moments]);
+        }
+
+        foreach (double single in SingleWeightArray)
+        {
+            weight.Add(single);
+        }
+
+        Require(Math.Abs(weight.Value - TotalWeight) <= 1e-9 * TotalWeight, Guard.Text($"a total weight equal to the sum over cells and single values, {weight.Value}"));
+
+        // n values of total weight W have squares between W²/n and W².
+        double root = Math.Sqrt(SquaredWeight) / TotalWeight;
+        Require(root <= 1 + 1e-9 && root * root * Count >= 1 - 1e-9, "squared weights that values of this total can have");
     }
 
     private static void Require(bool holds, string what)

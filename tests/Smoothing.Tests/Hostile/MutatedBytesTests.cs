@@ -44,6 +44,26 @@ public class MutatedBytesTests
         Assert.True(refused > 10_000, $"only {refused} refused: the mutations are too tame");
     }
 
+    // Found by coverage-guided fuzzing: a total weight of 1e-310 beside cells of weight 1 made every density NaN.
+    [Theory]
+    [InlineData(64, 1e-310)]
+    [InlineData(64, 5)]
+    [InlineData(72, 17)]
+    [InlineData(72, 3)]
+    public void FromBytes_TotalsThatContradictTheCells_AreRefused(int offset, double total)
+    {
+        byte[] bytes = CondensedSample.Of([1.0, 2, 3, 4.5]).ToBytes();
+        BitConverter.TryWriteBytes(bytes.AsSpan(offset), total);
+        ulong hash = 14695981039346656037;
+        foreach (byte b in bytes.AsSpan(0, bytes.Length - 8))
+        {
+            hash = (hash ^ b) * 1099511628211;
+        }
+
+        BitConverter.TryWriteBytes(bytes.AsSpan(bytes.Length - 8), hash);
+        Assert.Throws<ArgumentException>(() => CondensedSample.FromBytes(bytes));
+    }
+
     [Fact]
     public void FromJson_MutatedInput_NeverCrashesNorHoards()
     {
