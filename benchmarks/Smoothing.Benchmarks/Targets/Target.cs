@@ -8,4 +8,5 @@ namespace Smoothing.Benchmarks.Targets;
 /// <param name="Yardstick">The baseline.</param>
 /// <param name="Job">The work, everything included.</param>
 /// <param name="Scale">What one run of the yardstick stands for, when it is a part of the baseline only.</param>
-internal sealed record Target(string Id, string Measurement, double Limit, Action Reset, Action Yardstick, Action Job, double Scale = 1);
+/// <param name="Measure">Where a ratio of two times is not what is asked: gives the figure itself.</param>
+internal sealed record Target(string Id, string Measurement, double Limit, Action Reset, Action Yardstick, Action Job, double Scale = 1, Func<double>? Measure = null);

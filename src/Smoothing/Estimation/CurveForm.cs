@@ -26,6 +26,14 @@ internal abstract class CurveForm
     /// <summary>destination[j] = ∫ f up to x_j, or from there on when <paramref name="upper"/>.</summary>
     public abstract void Cumulatives(ReadOnlySpan<double> x, bool upper, Span<double> destination);
 
+    /// <summary>Value, first derivative and lower tail at the same points.</summary>
+    public virtual void Evaluate(ReadOnlySpan<double> x, Span<double> values, Span<double> slopes, Span<double> cumulatives)
+    {
+        Derivatives(x, 0, values);
+        Derivatives(x, 1, slopes);
+        Cumulatives(x, upper: false, cumulatives);
+    }
+
     /// <summary>Fills the destination with independent draws; false when the form has no recipe of its own and must be inverted.</summary>
     public virtual bool TryDraw(ref RandomStream random, Span<double> destination) => false;
 

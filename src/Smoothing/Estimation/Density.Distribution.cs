@@ -36,6 +36,23 @@ public sealed partial class Density
         _form.Derivatives(x, order, destination);
     }
 
+    /// <summary>f̂, f̂′ and F̂ at many points in one pass, in any order of the points.</summary>
+    /// <param name="x">Where, in the unit of the data; ±∞ allowed.</param>
+    /// <param name="values">Receives f̂; at least as long as <paramref name="x"/>.</param>
+    /// <param name="slopes">Receives f̂′, as <see cref="Derivatives"/> with order 1.</param>
+    /// <param name="cumulatives">Receives F̂, as <see cref="Cumulatives"/>.</param>
+    /// <exception cref="ArgumentException">A point is NaN, or a destination is too short.</exception>
+    /// <exception cref="InvalidOperationException">The curve has no derivative somewhere, because the kernel has none.</exception>
+    /// <remarks>Cost: with many values and a Gaussian-based kernel about twice <see cref="Values"/>, instead of three times; otherwise that of the three calls. Accuracy: theirs.</remarks>
+    public void Evaluate(ReadOnlySpan<double> x, Span<double> values, Span<double> slopes, Span<double> cumulatives)
+    {
+        Guard.Numbers(x, nameof(x));
+        Guard.Destination(x.Length, values.Length);
+        Guard.Destination(x.Length, slopes.Length);
+        Guard.Destination(x.Length, cumulatives.Length);
+        _form.Evaluate(x, values, slopes, cumulatives);
+    }
+
     /// <summary>The smoothed distribution function F̂(x) = ∫ f̂ up to x; 0 at −∞, 1 at +∞.</summary>
     /// <param name="x">Where, in the unit of the data.</param>
     /// <returns>The share at or below <paramref name="x"/>; in [0, 1] and never falling unless the kernel is negative in places.</returns>

@@ -12,4 +12,12 @@ internal abstract class KernelSums
 
     /// <summary>destination[j] = (1/Σw) Σ wᵢ ∫ K up to (x_j − Xᵢ)/h, or from there on when <paramref name="upper"/>: relative accuracy on the asked side.</summary>
     public abstract void Cumulatives(ReadOnlySpan<double> x, bool upper, Span<double> destination);
+
+    /// <summary>Value, first derivative and lower tail at the same points; algorithms that can do so share the work.</summary>
+    public virtual void Evaluate(ReadOnlySpan<double> x, Span<double> values, Span<double> slopes, Span<double> cumulatives)
+    {
+        Derivatives(x, 0, values);
+        Derivatives(x, 1, slopes);
+        Cumulatives(x, upper: false, cumulatives);
+    }
 }

@@ -35,6 +35,8 @@ internal sealed class LineForm(KernelSums sums, Kernel kernel, double bandwidth,
 
     public override void Cumulatives(ReadOnlySpan<double> x, bool upper, Span<double> destination) => sums.Cumulatives(x, upper, destination);
 
+    public override void Evaluate(ReadOnlySpan<double> x, Span<double> values, Span<double> slopes, Span<double> cumulatives) => sums.Evaluate(x, values, slopes, cumulatives);
+
     public override bool TryDraw(ref RandomStream random, Span<double> destination)
     {
         if (draws is null || MayBeNegative)

@@ -13,6 +13,11 @@ internal static class SumsChoice
             return new CompactSums(sample, kernel, bandwidth);
         }
 
+        if (MomentSums.Serves(sample, kernel, bandwidth))
+        {
+            return new MomentSums(sample, kernel, bandwidth);
+        }
+
         if (GaussianDirectSums.Serves(kernel, bandwidth))
         {
             return new GaussianDirectSums(sample, kernel, bandwidth);
