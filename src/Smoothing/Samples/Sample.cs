@@ -13,8 +13,9 @@ public sealed partial class Sample
     private readonly double[] _values;
     private readonly double[] _weights;
     private readonly Lazy<(double[] Values, double[] Weights)> _sorted;
+    private readonly Lazy<(double Total, double Effective, double Mean, double Deviation)> _summary;
 
-    private Sample(double[] values, double[] weights, SampleOptions options, int leftOut, int weightless)
+    private Sample(double[] values, double[] weights, SampleOptions options, int leftOut, int weightless, (double Least, double Greatest)? range = null)
     {
         _values = values;
         _weights = weights;
@@ -24,8 +25,9 @@ public sealed partial class Sample
         Unit = options.Unit;
         WeightMeaning = options.WeightMeaning;
         _sorted = new Lazy<(double[], double[])>(Sort);
-        _range = new Lazy<(double, double)>(FindRange);
-        (TotalWeight, EffectiveCount, Mean, StandardDeviation) = SampleSummary.Of(values, weights, WeightMeaning);
+        _range = range is { } known ? new Lazy<(double, double)>(known) : new Lazy<(double, double)>(FindRange);
+        _summary = new Lazy<(double Total, double Effective, double Mean, double Deviation)>(() => SampleSummary.Of(values, weights, WeightMeaning));
+        (TotalWeight, EffectiveCount) = weights.Length == 0 ? (values.Length, values.Length) : (_summary.Value.Total, _summary.Value.Effective);
         _ranks = new Lazy<WeightedRanks>(() => new WeightedRanks(SortedValues, SortedWeights, WeightMeaning == WeightMeaning.Counts ? TotalWeight : EffectiveCount));
         _table = new Lazy<ValueTable>(() => new ValueTable(this));
         _tiedShare = new Lazy<double>(() => ValueTable.TiedShare(this));
@@ -64,11 +66,11 @@ public sealed partial class Sample
 
     /// <summary>Σwx/Σw, in the unit of the data.</summary>
     /// <remarks>Two passes: sums of blocks, then the mean of what is left. Error about one rounding of the largest value, also for values near ±1e308.</remarks>
-    public double Mean { get; }
+    public double Mean => _summary.Value.Mean;
 
     /// <summary>√(Σw(x − mean)²/Σw · m/(m − 1)) with m = <see cref="EffectiveCount"/>, in the unit of the data; divisor n − 1 without weights.</summary>
     /// <remarks>0 for one value, for equal values and where the effective count is 1. Squares neither overflow nor vanish; +∞ only where the result itself exceeds a double.</remarks>
-    public double StandardDeviation { get; }
+    public double StandardDeviation => _summary.Value.Deviation;
 
     /// <summary>Smallest value, among those of weight above 0.</summary>
     public double Minimum => IsSorted ? SortedValues[0] : _range.Value.Least;
@@ -96,11 +98,20 @@ public sealed partial class Sample
     /// <param name="options">Weights, missing values, name and unit; null for the defaults.</param>
     /// <returns>An immutable sample.</returns>
     /// <exception cref="ArgumentException">No value is left, a value is infinite, a missing one is not allowed, or weights are unusable.</exception>
-    /// <remarks>Cost: one copy and about four vectorised passes; nothing is sorted.</remarks>
+    /// <remarks>Cost: one vectorised pass that copies, checks and finds the range, a few more with weights or missing values; the mean and the rest are worked out on first need; nothing is sorted.</remarks>
     public static Sample Of(ReadOnlySpan<double> values, SampleOptions? options = null)
     {
         options ??= new SampleOptions();
         ReadOnlySpan<double> weights = options.Weights.Span;
+        if (weights.IsEmpty && !values.IsEmpty && SampleChecks.Options(options))
+        {
+            var copy = GC.AllocateUninitializedArray<double>(values.Length);
+            if (ColumnCopy.TryCopy(values, copy, out double least, out double greatest))
+            {
+                return new Sample(copy, [], options, 0, 0, (least, greatest));
+            }
+        }
+
         SampleChecks.Check(values, weights, options, out int missing, out int weightless);
         var kept = new double[values.Length - missing - weightless];
         var keptWeights = weights.IsEmpty ? [] : new double[kept.Length];

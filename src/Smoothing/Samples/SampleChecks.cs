@@ -6,6 +6,9 @@ namespace Smoothing.Samples;
 /// <summary>The checks on a column of values and its weights, one message per fault.</summary>
 internal static class SampleChecks
 {
+    public static bool Options(SampleOptions options) =>
+        (options.WeightMeaning is WeightMeaning.Relative or WeightMeaning.Counts) && (options.Missing is MissingValues.Reject or MissingValues.LeaveOut);
+
     public static void Check(ReadOnlySpan<double> values, ReadOnlySpan<double> weights, SampleOptions options, out int missing, out int weightless)
     {
         missing = 0;
@@ -15,7 +18,7 @@ internal static class SampleChecks
             throw new ArgumentException("values must hold at least one number, but is empty: pass the measurements.", nameof(values));
         }
 
-        if (!Enum.IsDefined(options.WeightMeaning) || !Enum.IsDefined(options.Missing))
+        if (!Options(options))
         {
             throw new ArgumentException(
                 Guard.Text($"WeightMeaning and Missing must be one of their names, but are {options.WeightMeaning} and {options.Missing}: see the two enumerations."), nameof(options));

@@ -175,6 +175,30 @@ public class MomentSumsTests
         }
     }
 
+    // Far more points than cells: polynomials of cells. The points hold every value and places between and beyond.
+    [Theory]
+    [InlineData("normal", 0.3)]
+    [InlineData("offset", 0.51)]
+    [InlineData("gap", 0.4)]
+    [InlineData("rounded", 0.27)]
+    [InlineData("equal", 0.3)]
+    public void Derivatives_ManyPoints_HoldTheGaussianGate(string name, double width)
+    {
+        double[] values = HardSamples.Make(name, Count), asked = Points(values, width);
+        double[] many = [.. asked, .. Enumerable.Range(0, 40_000).Select(i => values[i % Count] + (0.01 * (i / Count)))];
+        MomentSums sums = Make(values, [], Kernel.Gaussian, width);
+        var actual = new double[many.Length];
+        for (int order = 0; order <= 1; order++)
+        {
+            sums.Derivatives(many, order, actual);
+            for (int j = 0; j < asked.Length + 15; j++)
+            {
+                double expected = NormalOracle.Derivative(values, [], width, many[j], order);
+                Near.Absolute(expected, actual[j], 3e-13 * NormalOracle.Size(values, [], width, many[j], order), $"{name}, order {order} at {many[j]}");
+            }
+        }
+    }
+
     [Theory]
     [InlineData(4)]
     [InlineData(6)]

@@ -8,16 +8,25 @@ internal sealed unsafe class DenseField : MomentField
     private const int CoarsestLevel = 3;
     private const int Lower = 40, Upper = 48; // table numbers: order · 4 + level below them
 
-    // (1.57/2)¹⁶/16! ≤ 1e-15; a derivative or a count loses a power or two, so their cells stay a little narrower.
-    private const double DensityReach = 1.57, CountReach = 1.35;
+    // (1.9/2)¹⁶/16! = 2e-14, relative; a derivative or a count loses a power or two of it.
+    private const double Reach = 1.9;
     private const double WidestStep = 0.5;
+    private const int FewestPointsAPanel = 48;
 
     private readonly MomentLevel[] _levels;
+    private readonly double[] _steps;     // width of each level in units of h, and how many cells make an h
+    private readonly double[] _paces;
+    private readonly double[] _reaches;   // largest a*² each level serves
+    private readonly double _inverse;     // of the coarsest level
+    private readonly double _first;
+    private readonly double _step;
+    private readonly int _count;
     private readonly double[] _logWeight; // 2 ln(W/m₀) of the coarsest cells, +∞ where empty
     private readonly double[] _logBelow;  // the same for the weight up to and with the cell, and from the cell on
     private readonly double[] _logAbove;
     private readonly int[] _previous;     // nearest occupied cell at or below, at or above; −1 for none
     private readonly int[] _next;
+    private readonly MomentPanels?[] _panels = new MomentPanels?[Lower / 4];
 
     public DenseField(MomentCells cells, double bandwidth, double totalWeight)
         : base(bandwidth, totalWeight)
@@ -35,9 +44,18 @@ internal sealed unsafe class DenseField : MomentField
             _levels[l] = new MomentLevel(_levels[l - 1]);
         }
 
-        Known = cells.IsTruncated ? KnownMoments(cells) : MomentCells.Moments;
+        KnownMomentCount = cells.IsTruncated ? KnownMoments(cells) : MomentCells.Moments;
+        (_steps, _paces, _reaches) = (new double[last + 1], new double[last + 1], new double[last + 1]);
+        for (int l = 0; l <= last; l++)
+        {
+            double pace = _paces[l] = bandwidth / _levels[l].Width;
+            _steps[l] = _levels[l].Width / bandwidth;
+            _reaches[l] = l == 0 ? double.PositiveInfinity : Reach * pace * (Reach * pace);
+        }
+
         MomentLevel coarsest = _levels[last];
         int count = coarsest.Count;
+        (_inverse, _first, _step, _count) = (coarsest.Inverse, coarsest.First, _steps[last], count);
         (_logWeight, _logBelow, _logAbove, _previous, _next) = (new double[count], new double[count], new double[count], new int[count], new int[count]);
         CompensatedSum sum = default;
         int at = -1;
@@ -63,15 +81,25 @@ internal sealed unsafe class DenseField : MomentField
         }
     }
 
-    private int Known { get; }
+    private int KnownMomentCount { get; }
 
     public override void Derivatives(ReadOnlySpan<double> x, int order, double[] parts, double factor, Span<double> destination)
     {
-        double reach = order + parts.Length > 1 ? CountReach : DensityReach;
+        MomentPanels? panels = Panels(x.Length, order, parts);
+        if (panels is not null && panels.Evaluate(x, factor, destination))
+        {
+            return;
+        }
+
         for (int j = 0; j < x.Length; j++)
         {
+            if (panels is not null && !double.IsNaN(destination[j]))
+            {
+                continue;
+            }
+
             double crowd = Crowding(x[j]);
-            destination[j] = crowd < double.PositiveInfinity ? factor * Evaluate(x[j], crowd, crowd + DensityMargin, reach, order * 4, parts, out _) : 0;
+            destination[j] = crowd < double.PositiveInfinity ? factor * Evaluate(x[j], crowd, Math.Min(Math.Sqrt(crowd + DensityMargin), Farthest), order * 4, parts, out _) : 0;
         }
     }
 
@@ -101,17 +129,53 @@ internal sealed unsafe class DenseField : MomentField
                 crowd = Math.Max(crowd, counted);
             }
 
-            MomentLevel level = LevelFor(crowd, CountReach, out int l);
-            MomentTable density = TableOf(l, parts), slope = TableOf(4 + l, parts), count = TableOf(Lower + l, parts);
-            double step = level.Width / Bandwidth;
-            double offset = Window(x[j], level, crowd + CountMargin, density.Groups, out int from, out int to);
-            MomentEvaluator.DenseThree(density, slope, count, offset, step, from, to, sums);
+            int l = LevelFor(crowd);
+            MomentTable density = TableOf(l, parts), count = TableOf(Lower + l, parts);
+            double radius = Math.Min(Math.Sqrt(crowd + CountMargin), Farthest);
+            double offset = Window(x[j], l, radius, density.Groups, out int from, out int to);
+            MomentEvaluator.DenseThree(density, count, offset, _steps[l], from, to, sums);
             values[j] = factor / Bandwidth * sums[0];
             slopes[j] = factor / Bandwidth / Bandwidth * sums[1];
-            cumulatives[j] = (factor * sums[2]) + (Beyond(x[j], level, false) / totalWeight);
+            cumulatives[j] = (factor * sums[2]) + (Beyond(x[j], l, radius, false) / totalWeight);
         }
 
         return true;
+    }
+
+    // With this many points for each wide cell a polynomial a cell pays; made once for each order.
+    private MomentPanels? Panels(int points, int order, double[] parts)
+    {
+        if (points < FewestPointsAPanel * (long)_count)
+        {
+            return null;
+        }
+
+        return Volatile.Read(ref _panels[order]) ?? MakePanels(order, parts);
+    }
+
+    private MomentPanels MakePanels(int order, double[] parts)
+    {
+        lock (_panels)
+        {
+            double width = MomentPanels.Reach / _step;
+            MomentPanels made = _panels[order] ?? new MomentPanels(
+                _inverse,
+                _first,
+                _count,
+                cell => Math.Max(Crowding((_first + cell) / _inverse), Crowding((_first + cell + 1) / _inverse)) <= width * width,
+                (x, y) => Points(x, order, parts, y));
+            Volatile.Write(ref _panels[order], made);
+            return made;
+        }
+    }
+
+    private void Points(double[] x, int order, double[] parts, double[] destination)
+    {
+        for (int j = 0; j < x.Length; j++)
+        {
+            double crowd = Crowding(x[j]);
+            destination[j] = Evaluate(x[j], crowd, Math.Min(Math.Sqrt(crowd + DensityMargin), Farthest), order * 4, parts, out _);
+        }
     }
 
     private double Count(double x, bool upper, double[] parts)
@@ -121,24 +185,25 @@ internal sealed unsafe class DenseField : MomentField
             return crowd;
         }
 
-        double sum = Evaluate(x, crowd, crowd + CountMargin, CountReach, upper ? Upper : Lower, parts, out MomentLevel level) * NormalLaw.InverseSqrtTwoPi;
-        return sum + Beyond(x, level, upper);
+        double radius = Math.Min(Math.Sqrt(crowd + CountMargin), Farthest);
+        double sum = Evaluate(x, crowd, radius, upper ? Upper : Lower, parts, out int l) * NormalLaw.InverseSqrtTwoPi;
+        return sum + Beyond(x, l, radius, upper);
     }
 
-    // Beyond the far end of the table the count stays at the total.
-    private double Beyond(double x, MomentLevel level, bool upper)
+    // Beyond the far end of the table the count stays at the total; further away than the radius that can't be seen.
+    private double Beyond(double x, int l, double radius, bool upper)
     {
+        MomentLevel level = _levels[l];
         double u = x * level.Inverse;
-        double v = (upper ? level.First - u : u - (level.First + level.Count)) * (level.Width / Bandwidth);
-        return v < -Farthest ? 0 : TotalWeight * NormalLaw.Cumulative(v);
+        double v = (upper ? level.First - u : u - (level.First + level.Count)) * _steps[l];
+        return v < -radius ? 0 : TotalWeight * NormalLaw.Cumulative(v);
     }
 
     // a*² for a count; false, with the count itself, where the table is so far away that nothing needs summing.
     private bool CountCrowding(double x, bool upper, out double crowd)
     {
-        MomentLevel coarsest = _levels[^1];
-        double u = x * coarsest.Inverse, step = coarsest.Width / Bandwidth;
-        double below = (u - coarsest.First) * step, above = (coarsest.First + coarsest.Count - u) * step;
+        double u = (x * _inverse) - _first;
+        double below = u * _step, above = (_count - u) * _step;
         if (below < -Farthest || above < -Farthest)
         {
             crowd = (below < -Farthest) == upper ? TotalWeight : 0;
@@ -146,17 +211,17 @@ internal sealed unsafe class DenseField : MomentField
         }
 
         // Where no weight lies on the asked side yet, the nearest cell decides; inside, the weight passed so far.
-        int cell = (int)Math.Clamp(Math.Floor(u) - coarsest.First, 0, coarsest.Count - 1);
+        int cell = (int)Math.Clamp(u, 0, _count - 1);
         int first = upper ? _previous[^1] : _next[0];
         double[] logs = upper ? _logAbove : _logBelow;
         if (upper ? cell <= first : cell >= first)
         {
-            double outside = Math.Max(0, upper ? -above : -below) + step;
+            double outside = Math.Max(0, upper ? -above : -below) + _step;
             crowd = logs[cell] + (outside * outside);
         }
         else
         {
-            double distance = (Math.Abs(u - (coarsest.First + first) - 0.5) + 0.5) * step;
+            double distance = (Math.Abs(u - first - 0.5) + 0.5) * _step;
             crowd = logs[first] + (distance * distance);
         }
 
@@ -166,65 +231,65 @@ internal sealed unsafe class DenseField : MomentField
     // a*²: 2 ln(W/m₀) plus the squared distance of the farthest place of the nearest occupied cell, in units of h; ∞ where the density is 0.
     private double Crowding(double x)
     {
-        MomentLevel coarsest = _levels[^1];
-        double u = x * coarsest.Inverse, step = coarsest.Width / Bandwidth;
-        double place = u - coarsest.First;
-        if (!(place * step > -Farthest && (place - coarsest.Count) * step < Farthest))
+        double place = (x * _inverse) - _first;
+        if (!(place * _step > -Farthest && (place - _count) * _step < Farthest))
         {
             return double.PositiveInfinity;
         }
 
-        int cell = (int)Math.Clamp(Math.Floor(place), 0, coarsest.Count - 1);
+        int cell = (int)Math.Clamp(place, 0, _count - 1);
         double best = double.PositiveInfinity;
         if (_previous[cell] is >= 0 and int before)
         {
-            double distance = (Math.Abs(place - before - 0.5) + 0.5) * step;
+            double distance = (Math.Abs(place - before - 0.5) + 0.5) * _step;
             best = (distance * distance) + _logWeight[before];
         }
 
         if (_next[cell] is >= 0 and int after)
         {
-            double distance = (Math.Abs(place - after - 0.5) + 0.5) * step;
+            double distance = (Math.Abs(place - after - 0.5) + 0.5) * _step;
             best = Math.Min(best, (distance * distance) + _logWeight[after]);
         }
 
         return best < 2 * Farthest * Farthest ? best : double.PositiveInfinity;
     }
 
-    private double Evaluate(double x, double crowd, double radius, double reach, int kind, double[] parts, out MomentLevel level)
+    private double Evaluate(double x, double crowd, double radius, int kind, double[] parts, out int l)
     {
-        level = LevelFor(crowd, reach, out int l);
+        l = LevelFor(crowd);
         MomentTable table = TableOf(kind + l, parts);
-        double offset = Window(x, level, radius, table.Groups, out int from, out int to);
-        return MomentEvaluator.Dense(table.Coefficients, table.Terms, offset, level.Width / Bandwidth, from, to);
+        double offset = Window(x, l, radius, table.Groups, out int from, out int to);
+        return MomentEvaluator.Dense(table.Coefficients, table.Terms, offset, _steps[l], from, to);
     }
 
     // The widest cells whose truncation is still below what the result can show.
-    private MomentLevel LevelFor(double crowd, double reach, out int l)
+    private int LevelFor(double crowd)
     {
-        double crowding = Math.Sqrt(crowd);
-        l = _levels.Length - 1;
-        while (l > 0 && crowding * _levels[l].Width > reach * Bandwidth)
+        int l = _levels.Length - 1;
+        while (crowd > _reaches[l])
         {
             l--;
         }
 
-        return _levels[l];
+        return l;
     }
 
     // The place of x in cells from the middle of the first one, and the groups of four cells that can matter.
-    private double Window(double x, MomentLevel level, double radius, int groups, out int from, out int to)
+    private double Window(double x, int l, double radius, int groups, out int from, out int to)
     {
-        double cells = Math.Min(Math.Sqrt(radius), Farthest) * Bandwidth / level.Width;
+        MomentLevel level = _levels[l];
+        double cells = radius * _paces[l];
         double offset = (x * level.Inverse) - level.First - 0.5;
-        from = (int)Math.Clamp(Math.Floor((offset - cells) / 4), 0, groups);
-        to = (int)Math.Clamp(Math.Floor((offset + cells) / 4) + 1, from, groups);
+
+        // Truncation toward zero differs from the floor below zero only, where it is cut off anyway.
+        from = (int)Math.Clamp((offset - cells) * 0.25, 0, groups);
+        to = offset + cells < 0 ? from : (int)Math.Clamp(((offset + cells) * 0.25) + 1, from, groups);
         return offset;
     }
 
-    private MomentTable TableOf(int kind, double[] parts) => Table(kind, (Field: this, Parts: parts), static (state, kind) => state.Field.Make(kind, state.Parts));
+    private MomentTable TableOf(int kind, double[] parts) => Known(kind) ?? Table(kind, parts);
 
-    private MomentTable Make(int kind, double[] parts)
+    protected override MomentTable Make(int kind, double[] parts)
     {
         MomentLevel level = _levels[kind & 3];
         double step = level.Width / Bandwidth;
@@ -243,7 +308,7 @@ internal sealed unsafe class DenseField : MomentField
             sum.Add(level.Records[c * MomentCells.Moments]);
         }
 
-        return MomentTable.OfCount(level.Records, level.Count, Known, step, upper, counts, CountParts(parts, upper));
+        return MomentTable.OfCount(level.Records, level.Count, KnownMomentCount, step, upper, counts, CountParts(parts, upper));
     }
 
     private static int KnownMoments(MomentCells cells)

@@ -140,29 +140,14 @@ internal sealed unsafe class MomentCells
 
     private void FillSparse(Sample sample)
     {
-        ReadOnlySpan<double> sorted = sample.SortedValues, weights = sample.SortedWeights;
-        int occupied = 0;
-        double last = double.NaN;
-        for (int i = 0; i < sorted.Length; i++)
+        fixed (double* values = sample.SortedValues, weights = sample.SortedWeights)
         {
-            double number = Math.Floor(sorted[i] * Inverse);
-            occupied += number != last ? 1 : 0;
-            last = number;
-        }
-
-        var numbers = new double[occupied];
-        double* record = MakeSparse(numbers) - Moments;
-        last = double.NaN;
-        for (int i = 0, c = 0; i < sorted.Length; i++)
-        {
-            double number = Math.Floor(sorted[i] * Inverse);
-            if (number != last)
+            var numbers = new double[MomentScatter.AddSorted(values, weights, sample.Count, Inverse, null, null)];
+            double* records = MakeSparse(numbers);
+            fixed (double* into = numbers)
             {
-                numbers[c++] = last = number;
-                record += Moments;
+                MomentScatter.AddSorted(values, weights, sample.Count, Inverse, into, records);
             }
-
-            MomentScatter.AddOne(sorted[i], weights.IsEmpty ? 1 : weights[i], Inverse, record);
         }
     }
 }

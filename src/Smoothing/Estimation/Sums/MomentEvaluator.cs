@@ -50,29 +50,56 @@ internal static unsafe class MomentEvaluator
         return Vector256.Sum(sum + second);
     }
 
-    /// <summary>Three tables of one lattice at once: the exponentials are shared.</summary>
+    /// <summary>Density, slope and count at once. Exponentials are shared, and (e^(−a²/2) g)′ = e^(−a²/2)(D g′(t) − a g(t)) takes the slope from the density's own coefficients.</summary>
     [MethodImpl(MethodImplOptions.AggressiveOptimization)]
-    public static void DenseThree(MomentTable first, MomentTable second, MomentTable third, double offset, double step, int from, int to, double* sums)
+    public static void DenseThree(MomentTable density, MomentTable count, double offset, double step, int from, int to, double* sums)
     {
         Vector256<double> d = Vector256.Create(step), lanes = Vector256.Create(0.0, 1, 2, 3), minusHalf = Vector256.Create(-0.5);
         Vector256<double> s0 = default, s1 = default, s2 = default;
-        double* c0 = first.Coefficients + (from * 4L * first.Terms), c1 = second.Coefficients + (from * 4L * second.Terms), c2 = third.Coefficients + (from * 4L * third.Terms);
-        int shared = Math.Min(first.Terms, Math.Min(second.Terms, third.Terms));
-        for (int g = from; g < to; g++, c0 += 4 * first.Terms, c1 += 4 * second.Terms, c2 += 4 * third.Terms)
+        int shared = Math.Min(density.Terms, count.Terms);
+        double* c = density.Coefficients + (from * 4L * density.Terms), n = count.Coefficients + (from * 4L * count.Terms);
+        int g = from, top = 4 * (shared - 1);
+        long stride = 4L * density.Terms, pace = 4L * count.Terms;
+        for (; g + 1 < to; g += 2, c += 2 * stride, n += 2 * pace)
+        {
+            Vector256<double> a = (Vector256.Create(offset - (4.0 * g)) - lanes) * d, a2 = (Vector256.Create(offset - (4.0 * (g + 1))) - lanes) * d;
+            Vector256<double> t = a * d, t2 = a2 * d;
+            Highest(c, density.Terms, shared, t, out Vector256<double> p, out Vector256<double> q);
+            Highest(c + stride, density.Terms, shared, t2, out Vector256<double> p2, out Vector256<double> q2);
+            Highest(n, count.Terms, shared, t, out Vector256<double> r, out _);
+            Highest(n + pace, count.Terms, shared, t2, out Vector256<double> r2, out _);
+            for (int k = top; k >= 0; k -= 4)
+            {
+                q = Vector256.MultiplyAddEstimate(q, t, p);
+                q2 = Vector256.MultiplyAddEstimate(q2, t2, p2);
+                p = Vector256.MultiplyAddEstimate(p, t, Vector256.Load(c + k));
+                p2 = Vector256.MultiplyAddEstimate(p2, t2, Vector256.Load(c + stride + k));
+                r = Vector256.MultiplyAddEstimate(r, t, Vector256.Load(n + k));
+                r2 = Vector256.MultiplyAddEstimate(r2, t2, Vector256.Load(n + pace + k));
+            }
+
+            Vector256<double> e = VectorExp.Of(a * a * minusHalf), e2 = VectorExp.Of(a2 * a2 * minusHalf);
+            s0 += (e * p) + (e2 * p2);
+            s1 += (e * ((q * d) - (a * p))) + (e2 * ((q2 * d) - (a2 * p2)));
+            s2 += (e * r) + (e2 * r2);
+        }
+
+        if (g < to)
         {
             Vector256<double> a = (Vector256.Create(offset - (4.0 * g)) - lanes) * d;
             Vector256<double> t = a * d;
-            Vector256<double> p = Above(c0, first.Terms, shared, t), q = Above(c1, second.Terms, shared, t), r = Above(c2, third.Terms, shared, t);
-            for (int k = 4 * (shared - 1); k >= 0; k -= 4)
+            Highest(c, density.Terms, shared, t, out Vector256<double> p, out Vector256<double> q);
+            Highest(n, count.Terms, shared, t, out Vector256<double> r, out _);
+            for (int k = top; k >= 0; k -= 4)
             {
-                p = Vector256.MultiplyAddEstimate(p, t, Vector256.Load(c0 + k));
-                q = Vector256.MultiplyAddEstimate(q, t, Vector256.Load(c1 + k));
-                r = Vector256.MultiplyAddEstimate(r, t, Vector256.Load(c2 + k));
+                q = Vector256.MultiplyAddEstimate(q, t, p);
+                p = Vector256.MultiplyAddEstimate(p, t, Vector256.Load(c + k));
+                r = Vector256.MultiplyAddEstimate(r, t, Vector256.Load(n + k));
             }
 
             Vector256<double> e = VectorExp.Of(a * a * minusHalf);
             s0 += e * p;
-            s1 += e * q;
+            s1 += e * ((q * d) - (a * p));
             s2 += e * r;
         }
 
@@ -81,17 +108,17 @@ internal static unsafe class MomentEvaluator
         sums[2] = Vector256.Sum(s2);
     }
 
-    // Horner over the coefficients from the highest down to, and not with, the shared ones.
+    // Horner over the coefficients that one polynomial has more than the other, with the derivative; usually none.
     [MethodImpl(MethodImplOptions.AggressiveInlining)]
-    private static Vector256<double> Above(double* c, int terms, int shared, Vector256<double> t)
+    private static void Highest(double* c, int terms, int shared, Vector256<double> t, out Vector256<double> p, out Vector256<double> q)
     {
-        Vector256<double> p = default;
+        p = default;
+        q = default;
         for (int k = terms - 1; k >= shared; k--)
         {
+            q = Vector256.MultiplyAddEstimate(q, t, p);
             p = Vector256.MultiplyAddEstimate(p, t, Vector256.Load(c + (4 * k)));
         }
-
-        return p;
     }
 
     /// <summary>Occupied cells with numbers of their own; x in cells is <paramref name="u"/>.</summary>

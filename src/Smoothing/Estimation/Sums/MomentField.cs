@@ -12,7 +12,7 @@ internal abstract unsafe class MomentField(double bandwidth, double totalWeight)
     protected const double Farthest = 40;
 
     private readonly Lock _lock = new();
-    private MomentTable?[] _tables = new MomentTable?[64];
+    private readonly MomentTable?[] _tables = new MomentTable?[64];
 
     protected double Bandwidth { get; } = bandwidth;
 
@@ -31,22 +31,20 @@ internal abstract unsafe class MomentField(double bandwidth, double totalWeight)
     public virtual bool TryEvaluate(ReadOnlySpan<double> x, double[] parts, double totalWeight, Span<double> values, Span<double> slopes, Span<double> cumulatives) => false;
 
     // A field belongs to one kernel, so order and level name a table.
-    protected MomentTable Table<TState>(int kind, TState state, Func<TState, int, MomentTable> make)
+    protected MomentTable? Known(int kind) => Volatile.Read(ref _tables[kind]);
+
+    protected abstract MomentTable Make(int kind, double[] parts);
+
+    protected MomentTable Table(int kind, double[] parts)
     {
-        MomentTable?[] tables = _tables;
-        if (kind < tables.Length && Volatile.Read(ref tables[kind]) is { } known)
+        if (Known(kind) is { } known)
         {
             return known;
         }
 
         lock (_lock)
         {
-            if (_tables[kind] is { } made)
-            {
-                return made;
-            }
-
-            MomentTable table = make(state, kind);
+            MomentTable table = _tables[kind] ?? Make(kind, parts);
             Volatile.Write(ref _tables[kind], table);
             return table;
         }

@@ -26,8 +26,8 @@ internal static unsafe class MomentScatter
 
     public static void Add(double* values, double* weights, int count, double inverse, double first, int cells, double* records)
     {
-        // How often full cells are looked for: one look a cell for every eight values costs nothing that can be measured.
-        int stretch = Math.Max(1 << 13, 8 * cells);
+        // How often full cells are looked for: one look a cell for every twelve values costs nothing that can be measured.
+        int stretch = Math.Max(1 << 13, 12 * cells);
         if (count <= stretch)
         {
             AddStretch(values, weights, count, inverse, first, records);
@@ -60,6 +60,72 @@ internal static unsafe class MomentScatter
             power = (r & 4) != 0 ? power * b4 : power;
             record[r] += (r & 8) != 0 ? power * b8 : power;
         }
+    }
+
+    /// <summary>Sorted values into one record for each occupied cell, in turn; returns how many. With <paramref name="records"/> null they are only counted.</summary>
+    [MethodImpl(MethodImplOptions.AggressiveOptimization)]
+    public static int AddSorted(double* values, double* weights, int count, double inverse, double* numbers, double* records)
+    {
+        int cells = 0;
+        double last = double.NaN;
+        if (records == null)
+        {
+            for (int i = 0; i < count; i++)
+            {
+                double number = Math.Floor(values[i] * inverse);
+                cells += number != last ? 1 : 0;
+                last = number;
+            }
+
+            return cells;
+        }
+
+        Vector256<double> ones = Vector256<double>.One;
+        Vector256<double> odd = Vector256.Create(0L, -1L, 0L, -1L).AsDouble(), upper = Vector256.Create(0L, 0L, -1L, -1L).AsDouble();
+        Vector256<double> s0 = default, s1 = default, s2 = default, s3 = default;
+        int held = 0;
+        for (int i = 0; i < count; i++)
+        {
+            double u = values[i] * inverse;
+            double number = Math.Floor(u);
+            if (number != last || held == FullCell)
+            {
+                Release(records + ((long)Math.Max(cells - 1, 0) * Moments), ref s0, ref s1, ref s2, ref s3);
+                held = 0;
+                if (number != last)
+                {
+                    numbers[cells++] = number;
+                    last = number;
+                }
+            }
+
+            double b = u - number - 0.5, b2 = b * b, b4 = b2 * b2;
+            Vector256<double> low = Vector256.ConditionalSelect(odd, Vector256.Create(b), ones) * Vector256.ConditionalSelect(upper, Vector256.Create(b2), ones);
+            if (weights != null)
+            {
+                low *= Vector256.Create(weights[i]);
+            }
+
+            Vector256<double> b8 = Vector256.Create(b4 * b4), next = low * Vector256.Create(b4);
+            s0 += low;
+            s1 += next;
+            s2 += low * b8;
+            s3 += next * b8;
+            held++;
+        }
+
+        Release(records + ((long)Math.Max(cells - 1, 0) * Moments), ref s0, ref s1, ref s2, ref s3);
+        return cells;
+    }
+
+    [MethodImpl(MethodImplOptions.AggressiveInlining)]
+    private static void Release(double* record, ref Vector256<double> s0, ref Vector256<double> s1, ref Vector256<double> s2, ref Vector256<double> s3)
+    {
+        (Vector256.Load(record) + s0).Store(record);
+        (Vector256.Load(record + 4) + s1).Store(record + 4);
+        (Vector256.Load(record + 8) + s2).Store(record + 8);
+        (Vector256.Load(record + 12) + s3).Store(record + 12);
+        s0 = s1 = s2 = s3 = default;
     }
 
     [MethodImpl(MethodImplOptions.AggressiveOptimization)]

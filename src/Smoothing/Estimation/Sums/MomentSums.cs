@@ -7,8 +7,8 @@ namespace Smoothing.Estimation;
 /// <summary>Kernels φ(u)·q(u²) in linear time: one unsorted pass to cell moments, then a few dozen cells a point, whatever the number of values.</summary>
 /// <remarks>
 /// <para>Method: Hermite's expansion about the centres of cells of a power-of-two lattice, h/32 &lt; δ ≤ h/16, sixteen moments. With a* the distance at which
-/// a value of the whole weight would count as much as the nearest occupied cell, widths up to h/2 serve as long as a*D ≤ 1.57, since
-/// (a*D/2)¹⁶/16! ≤ 1e-15; cells beyond √(a*² + 2 ln 1e15) can't change the result. Long ranges use a list of occupied cells.</para>
+/// a value of the whole weight would count as much as the nearest occupied cell, widths up to h/2 serve as long as a*D ≤ 1.9, since
+/// (a*D/2)¹⁶/16! ≤ 2e-14; cells beyond √(a*² + 2 ln 1e15) can't change the result. Long ranges use a list of occupied cells.</para>
 /// <para>Dominant error: rounding of the exponent, a²·1e-16, so relative 1e-13 at densities of 1e-200 of the peak and below 1e-15 of the peak near it.</para>
 /// </remarks>
 internal sealed unsafe class MomentSums : KernelSums

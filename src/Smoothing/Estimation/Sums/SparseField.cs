@@ -5,7 +5,7 @@ namespace Smoothing.Estimation;
 /// <summary>Occupied cells only, found by binary search: for ranges far longer than the bandwidth.</summary>
 internal sealed unsafe class SparseField : MomentField
 {
-    private const int Inside = 40; // table number; below it the order of the derivative
+    private const int Inside = 40, RestBelow = 41, RestAbove = 42; // table numbers; below them the order of the derivative
 
     private readonly MomentCells _cells;
     private readonly AlignedRoom _numbers = new();
@@ -46,8 +46,7 @@ internal sealed unsafe class SparseField : MomentField
 
     public override void Derivatives(ReadOnlySpan<double> x, int order, double[] parts, double factor, Span<double> destination)
     {
-        MomentTable table = Table(order, (Field: this, Parts: parts), static (state, order) => MomentTable.OfDerivatives(
-            state.Field._cells.Records, state.Field._cells.Count, state.Field._step, Shifted(state.Parts, order)));
+        MomentTable table = Table(order, parts);
         for (int j = 0; j < x.Length; j++)
         {
             double u = x[j] * _cells.Inverse;
@@ -59,10 +58,8 @@ internal sealed unsafe class SparseField : MomentField
 
     public override void Cumulatives(ReadOnlySpan<double> x, bool upper, double[] parts, double factor, Span<double> destination)
     {
-        MomentTable table = Table(Inside, this, static (field, _) => MomentTable.OfInside(field._cells.Records, field._cells.Count, field._step));
-        double[] rest = CountParts(parts, upper);
-        MomentTable? others = rest.Length == 0 ? null : Table(upper ? Inside + 1 : Inside + 2, (Field: this, Parts: rest), static (state, _) => MomentTable.OfDerivatives(
-            state.Field._cells.Records, state.Field._cells.Count, state.Field._step, state.Parts));
+        MomentTable table = Table(Inside, parts);
+        MomentTable? others = parts.Length == 1 ? null : Table(upper ? RestAbove : RestBelow, parts);
         double[] numbers = _cells.Numbers!;
         for (int j = 0; j < x.Length; j++)
         {
@@ -85,6 +82,13 @@ internal sealed unsafe class SparseField : MomentField
             destination[j] = factor * sum;
         }
     }
+
+    protected override MomentTable Make(int kind, double[] parts) => kind switch
+    {
+        Inside => MomentTable.OfInside(_cells.Records, _cells.Count, _step),
+        RestBelow or RestAbove => MomentTable.OfDerivatives(_cells.Records, _cells.Count, _step, CountParts(parts, kind == RestAbove)),
+        _ => MomentTable.OfDerivatives(_cells.Records, _cells.Count, _step, Shifted(parts, kind)),
+    };
 
     private static double Polynomial(MomentTable table, int cell, double t)
     {
