@@ -24,6 +24,9 @@ public sealed partial class Density
     /// <summary>The sample that was smoothed; null when only its condensed form was given.</summary>
     public Sample? Sample { get; }
 
+    /// <summary>The condensed sample that was smoothed; null when the values were given.</summary>
+    public CondensedSample? Condensed { get; private init; }
+
     /// <summary>The kernel.</summary>
     public Kernel Kernel { get; }
 
@@ -53,16 +56,16 @@ public sealed partial class Density
         return new Density(sample, kernel, bandwidth, options, sums, form);
     }
 
-    /// <summary>Smooths a condensed sample with the Gaussian kernel, from its cell moments alone.</summary>
+    /// <summary>Smooths a condensed sample with the Gaussian kernel or one of its higher orders, from its cell moments alone.</summary>
     /// <param name="sample">Cell moments, of cells at most 1/16 of the bandwidth wide; narrower with fewer than eight moments.</param>
-    /// <param name="kernel">The Gaussian kernel.</param>
+    /// <param name="kernel">The Gaussian kernel, or <see cref="Kernel.GaussianOfOrder"/>.</param>
     /// <param name="bandwidth">h, positive and finite, in the unit of the data.</param>
     /// <param name="options">Known limits and the like; null for the defaults.</param>
     /// <returns>The estimate; <see cref="Sample"/> is null, and what needs the values says so.</returns>
     /// <exception cref="ArgumentOutOfRangeException"><paramref name="bandwidth"/> is not positive and finite.</exception>
     /// <exception cref="ArgumentException">The kernel is another one, cells are too wide for the bandwidth (the message says which width it takes), values lie outside the support, or the options do not go together.</exception>
     /// <remarks>
-    /// Accuracy: 1e-13 of the peak from eight moments on, a millionth of it with fewer. Cost: some 1,000 cells a point at most, whatever the number of values.
+    /// Accuracy: with sixteen moments that of the values, relative 1e-12 down to 1e-200 of the peak; 1e-13 of the peak from eight moments on, a millionth of it with fewer. Cost: some dozen cells a point, whatever the number of values.
     /// </remarks>
     public static Density Of(CondensedSample sample, Kernel kernel, double bandwidth, DensityOptions? options = null)
     {
@@ -70,10 +73,10 @@ public sealed partial class Density
         Guard.Given(kernel);
         Guard.Positive(bandwidth, "choose one with BandwidthRules, or pass a width in the unit of the data");
         options ??= new DensityOptions();
-        var sums = new GaussianCellSums(sample, kernel, bandwidth);
+        KernelSums sums = CondensedWidth.SumsOf(sample, kernel, bandwidth);
         var range = new Interval(sample.Minimum, sample.Maximum);
         CurveForm form = FormChoice.Of(sums, kernel, bandwidth, options, range, null, (other, h) => SumsChoice.For(other, kernel, h));
-        return new Density(null, kernel, bandwidth, options, sums, form);
+        return new Density(null, kernel, bandwidth, options, sums, form) { Condensed = sample };
     }
 
     /// <summary>f̂ at one point; 0 at ±∞.</summary>

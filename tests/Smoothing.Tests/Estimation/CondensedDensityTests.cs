@@ -62,6 +62,67 @@ public class CondensedDensityTests
         }
     }
 
+    [Theory]
+    [InlineData(BoundaryCorrection.Reflection)]
+    [InlineData(BoundaryCorrection.LinearKernel)]
+    [InlineData(BoundaryCorrection.PositiveLinear)]
+    [InlineData(BoundaryCorrection.Renormalised)]
+    [InlineData(BoundaryCorrection.None)]
+    public void Of_EveryCorrection_EqualsTheValues(BoundaryCorrection boundary)
+    {
+        double[] values = SeededColumns.Draw("exponential", 4000, 4);
+        var options = new DensityOptions { Support = new Smoothing.Numerics.Interval(0, double.PositiveInfinity), Boundary = boundary };
+        Density direct = Density.Of(Sample.Of(values), Kernel.Gaussian, 0.2, options);
+        Density condensed = Density.Of(CondensedSample.Of(values), Kernel.Gaussian, 0.2, options);
+        for (double x = 0; x < 5; x += 0.1)
+        {
+            Near.Absolute(direct.Value(x), condensed.Value(x), 1e-12, $"value at {x}");
+            Near.Absolute(direct.Derivative(x), condensed.Derivative(x), 1e-11, $"slope at {x}");
+            Near.Absolute(direct.Cumulative(x), condensed.Cumulative(x), 1e-11, $"F at {x}");
+        }
+
+        Near.Relative(direct.Quantile(0.9), condensed.Quantile(0.9), 1e-9);
+    }
+
+    [Theory]
+    [InlineData(4)]
+    [InlineData(6)]
+    [InlineData(8)]
+    public void Of_HigherOrders_AreTheCurveOfTheValues(int order)
+    {
+        double[] values = SeededColumns.Draw("two groups", 5000, 6);
+        Density direct = Density.Of(Sample.Of(values), Kernel.GaussianOfOrder(order), 0.4);
+        Density condensed = Density.Of(CondensedSample.Of(values), Kernel.GaussianOfOrder(order), 0.4);
+        for (double x = -4; x < 4; x += 0.17)
+        {
+            Near.Absolute(direct.Value(x), condensed.Value(x), 1e-12, $"value at {x}");
+            Near.Absolute(direct.Cumulative(x), condensed.Cumulative(x), 1e-12, $"F at {x}");
+        }
+    }
+
+    [Fact]
+    public void Peaks_OfACondensedSample_AreThoseOfTheValues()
+    {
+        double[] values = SeededColumns.Draw("two groups", 5000, 7);
+        PeakSummary direct = Density.Of(Sample.Of(values), Kernel.Gaussian, 0.3).Peaks(), condensed = Density.Of(CondensedSample.Of(values), Kernel.Gaussian, 0.3).Peaks();
+        Assert.Equal(direct.Peaks.Count, condensed.Peaks.Count);
+        for (int i = 0; i < direct.Peaks.Count; i++)
+        {
+            Near.Absolute(direct.Peaks[i].Location, condensed.Peaks[i].Location, 1e-9);
+            Near.Relative(direct.Peaks[i].Height, condensed.Peaks[i].Height, 1e-11);
+        }
+    }
+
+    [Fact]
+    public void Of_OneValueFarBeyondTheLattice_IsKeptSingly()
+    {
+        double[] values = [.. SeededColumns.Draw("normal", 4000, 8), 1e300];
+        CondensedSample sample = CondensedSample.Of(values, new CondensingOptions { MaximumCells = 1000 });
+        Density condensed = Density.Of(sample, Kernel.Gaussian, 0.3), direct = Density.Of(Sample.Of(values[..^1]), Kernel.Gaussian, 0.3);
+        Near.Relative(direct.Value(0.2) * 4000 / 4001, condensed.Value(0.2), 1e-12);
+        Near.Relative(1.0 / 4001, condensed.Survival(1e200), 1e-12);
+    }
+
     [Fact]
     public void Of_WhatCellsCannotGive_IsRefused()
     {

@@ -4,10 +4,10 @@ using Smoothing.Samples;
 
 namespace Smoothing.Estimation;
 
-/// <summary>Sums of the Gaussian kernel from cell moments.</summary>
+/// <summary>Sums of the Gaussian kernel from cell moments, cell by cell: for the few cases whose cells can't be numbered in one table of <see cref="MomentCells"/>.</summary>
 /// <remarks>
 /// Method: Hermite's expansion about the centre of each cell, with a = (x − centre)/h and D = δ/h: φ^(r)(a − Db) = (−1)^r φ(a) Σ_q He_{r+q}(a)(Db)^q/q!, and
-/// Φ(a − Db) = Φ(a) − φ(a) Σ_{q ≥ 1} He_{q−1}(a)(Db)^q/q!. Cells are first widened to h/32 &lt; δ ≤ h/16, which costs nothing in accuracy. The remainder
+/// Φ(a − Db) = Φ(a) − φ(a) Σ_{q ≥ 1} He_{q−1}(a)(Db)^q/q!. The remainder
 /// of p moments is at most 1.09 (D/2)^p/√p! of the peak. Cells further than 39 h away are below the smallest double.
 /// </remarks>
 internal sealed class GaussianCellSums : KernelSums
@@ -22,26 +22,9 @@ internal sealed class GaussianCellSums : KernelSums
     private readonly double[] _below;
     private readonly double[] _singlesBelow;
 
-    public GaussianCellSums(CondensedSample sample, Kernel kernel, double bandwidth)
+    public GaussianCellSums(CondensedSample sample, double bandwidth)
     {
-        if (kernel is not GaussianKernel)
-        {
-            throw new ArgumentException(
-                Guard.Text($"kernel must be the Gaussian for a condensed sample, but is {kernel.Name}: cell moments give its curve exactly; for another kernel pass the values."), nameof(kernel));
-        }
-
-        // Eight moments are taken to mean an exact curve; fewer are an approximation asked for, held to a millionth of the peak.
-        double accuracy = sample.Moments >= 8 ? 1e-13 : 1e-6;
-        double widest = Math.Min(1 / 16.0, 2 * Math.Pow(accuracy * Math.Sqrt(Factorial(sample.Moments)) / 1.09, 1.0 / sample.Moments)) * bandwidth;
-        if (sample.Cells.Length > 0 && !(sample.CellWidth <= widest))
-        {
-            throw new ArgumentException(
-                Guard.Text($"cells must be at most {Math.ScaleB(1, Math.ILogB(widest))} wide for a bandwidth of {bandwidth} with {sample.Moments} moments, but are {sample.CellWidth}: condense with that CellWidth, or choose a larger bandwidth."),
-                nameof(sample));
-        }
-
-        int room = Math.ILogB(widest) - Math.ILogB(sample.CellWidth);
-        _cells = sample.Cells.Length > 0 && room > 0 ? sample.Coarsen(room) : sample;
+        _cells = sample;
         _bandwidth = bandwidth;
         _step = _cells.CellWidth / bandwidth;
         _centres = new double[_cells.Cells.Length];
@@ -130,8 +113,6 @@ internal sealed class GaussianCellSums : KernelSums
             (before, here) = (here, (a * here) - (q * before));
         }
     }
-
-    private static double Factorial(int n) => n <= 1 ? 1 : n * Factorial(n - 1);
 
     /// <summary>Σ He_{q − first}(a) D^q/q! m_q from q = first on.</summary>
     private double Series(int cell, int first, ReadOnlySpan<double> hermite)

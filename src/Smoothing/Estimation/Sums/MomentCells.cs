@@ -77,11 +77,11 @@ internal sealed unsafe class MomentCells
         return cells;
     }
 
-    /// <summary>The cells of a condensed sample, whose width is at most h/16; moments that it does not keep are zero.</summary>
-    public static MomentCells Of(CondensedSample sample)
+    /// <summary>The cells of a condensed sample, whose width serves the bandwidth already; moments that it does not keep are zero. Without cells, single values get cells of h/16.</summary>
+    public static MomentCells Of(CondensedSample sample, double bandwidth)
     {
-        int exponent = Math.ILogB(sample.CellWidth), kept = sample.Moments, all = sample.Cells.Length + sample.Singles.Length;
-        var cells = new MomentCells(exponent) { IsTruncated = kept < Moments };
+        int exponent = sample.Cells.Length > 0 ? Math.ILogB(sample.CellWidth) : ExponentFor(bandwidth), kept = sample.Moments, all = sample.Cells.Length + sample.Singles.Length;
+        var cells = new MomentCells(exponent) { IsTruncated = kept < Moments && sample.Cells.Length > 0 };
         var numbers = new double[all];
         var order = new int[all];
         for (int i = 0; i < all; i++)
@@ -101,16 +101,18 @@ internal sealed unsafe class MomentCells
         }
         else
         {
-            records = cells.MakeSparse(numbers);
+            records = cells.MakeSparse(Distinct(numbers));
         }
 
-        for (int i = 0; i < all; i++)
+        for (int i = 0, at = 0; i < all; i++)
         {
-            double* record = records + (Moments * (dense ? (int)(numbers[i] - cells.First) : i));
+            // Single values may share a cell.
+            at += i > 0 && numbers[i] != numbers[i - 1] ? 1 : 0;
+            double* record = records + (Moments * (dense ? (int)(numbers[i] - cells.First) : at));
             int from = order[i];
             if (from < sample.Cells.Length)
             {
-                sample.Sums.Slice(from * kept, kept).CopyTo(new Span<double>(record, kept));
+                Add(sample.Sums.Slice(from * kept, kept), record);
             }
             else
             {
@@ -119,6 +121,34 @@ internal sealed unsafe class MomentCells
         }
 
         return cells;
+    }
+
+    private static void Add(ReadOnlySpan<double> sums, double* record)
+    {
+        for (int r = 0; r < sums.Length; r++)
+        {
+            record[r] += sums[r];
+        }
+    }
+
+    private static double[] Distinct(double[] sorted)
+    {
+        int count = 0;
+        for (int i = 0; i < sorted.Length; i++)
+        {
+            count += i == 0 || sorted[i] != sorted[i - 1] ? 1 : 0;
+        }
+
+        var distinct = new double[count];
+        for (int i = 0, d = 0; i < sorted.Length; i++)
+        {
+            if (i == 0 || sorted[i] != sorted[i - 1])
+            {
+                distinct[d++] = sorted[i];
+            }
+        }
+
+        return distinct;
     }
 
     private void MakeDense(double low, double high)

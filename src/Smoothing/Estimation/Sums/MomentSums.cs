@@ -21,13 +21,21 @@ internal sealed unsafe class MomentSums : KernelSums
     private readonly double _bandwidth;
     private readonly double _totalWeight;
     private readonly Lazy<MomentField> _field;
-    private readonly KernelSums _direct;
+    private readonly KernelSums? _direct; // null when the values are gone
     private readonly double[] _parts;
 
     public MomentSums(Sample sample, Kernel kernel, double bandwidth)
     {
         (_bandwidth, _totalWeight) = (bandwidth, sample.TotalWeight);
         _direct = new GaussianDirectSums(sample, kernel, bandwidth);
+        _parts = GaussianParts.Of(kernel);
+        _field = new Lazy<MomentField>(() => MomentField.Of(MomentCells.Of(sample, bandwidth), bandwidth, sample.TotalWeight));
+    }
+
+    /// <summary>Of cells whose width serves the bandwidth, as <see cref="CondensedWidth"/> sees to.</summary>
+    public MomentSums(CondensedSample sample, Kernel kernel, double bandwidth)
+    {
+        (_bandwidth, _totalWeight) = (bandwidth, sample.TotalWeight);
         _parts = GaussianParts.Of(kernel);
         _field = new Lazy<MomentField>(() => MomentField.Of(MomentCells.Of(sample, bandwidth), bandwidth, sample.TotalWeight));
     }
@@ -41,6 +49,11 @@ internal sealed unsafe class MomentSums : KernelSums
     {
         if (order > HighestOrder)
         {
+            if (_direct is null)
+            {
+                throw new InvalidOperationException(Guard.Text($"order must be at most {HighestOrder} for a condensed sample, but is {order}: pass the values for higher derivatives."));
+            }
+
             _direct.Derivatives(x, order, destination);
             return;
         }
