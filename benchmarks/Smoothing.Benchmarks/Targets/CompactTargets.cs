@@ -5,7 +5,7 @@ using Smoothing.Samples;
 
 namespace Smoothing.Benchmarks.Targets;
 
-/// <summary>Targets of polynomial kernels and of few values: T7, T9, T12, T17, T18.</summary>
+/// <summary>Targets of polynomial kernels and of few values: T7, T8, T9, T12, T17, T18.</summary>
 internal static class CompactTargets
 {
     private const int Million = 1_000_000;
@@ -13,7 +13,7 @@ internal static class CompactTargets
     // The Epanechnikov reference bandwidth for standard normal values: (8·3·√π·0.6/(3·0.04))^(1/5) n^(−1/5) = 2.34 n^(−1/5).
     private const double ReferenceFactor = 2.34;
 
-    public static IReadOnlyList<Func<Target>> All { get; } = [Grid(Kernel.Epanechnikov, "T7", 0.09), LeaveOneOut, SmallGaussian, ManyPoints, CrossValidation];
+    public static IReadOnlyList<Func<Target>> All { get; } = [Grid(Kernel.Epanechnikov, "T7", 0.09), Grid(Kernel.Triweight, "T8", 0.18), LeaveOneOut, SmallGaussian, ManyPoints, CrossValidation];
 
     private static Func<Target> Grid(Kernel kernel, string id, double limit) => () =>
     {

@@ -1,60 +1,83 @@
 using System.Runtime.CompilerServices;
 using System.Runtime.InteropServices;
 using System.Runtime.Intrinsics;
+using System.Runtime.Intrinsics.X86;
 
 namespace Smoothing.Estimation;
 
 internal sealed unsafe partial class CompactCells
 {
-    private const double Rounder = 6755399441055744; // 1.5·2⁵²: adding it leaves the nearest whole number in the low bits
-    private const int Strip = 256;                   // values classified ahead of adding them up: fits the first cache
+    private const int Strip = 256; // values classified ahead of adding them up: fits the first cache
 
     private void Accumulate(ReadOnlySpan<double> values, ReadOnlySpan<double> weights)
     {
         int cells = (3 * _points) + 1;
-        long size = 2L * _side * cells;
-        double* records = _records.Of(size);
-        NativeMemory.Clear(records, (nuint)(size * sizeof(double)));
-        if (_states.Length < cells)
+        double* records = Measure(cells);
+        if (_places.Length < cells)
         {
-            _states = new int[cells];
+            _places = new int[cells];
+            _counts = new int[cells];
         }
 
-        Array.Clear(_states, 0, cells);
+        Array.Clear(_places, 0, cells);
+        Array.Clear(_counts, 0, cells);
         _carries = 0;
-        _carried.Of((1L + (values.Length / CarryAfter)) * 4 * _side); // sums and their errors
+        _carried.Of((1L + (values.Length / CarryAfter)) * 8 * _vectors); // sums and their errors
         fixed (double* data = values, mass = weights)
-        fixed (int* states = _states)
+        fixed (int* counts = _counts)
         {
-            AddAll(data, mass, values.Length, records, states);
-            for (int k = 0; k < cells; k++)
+            long* strip = stackalloc long[Strip];
+            for (int start = 0; start < values.Length; start += Strip)
             {
-                if (states[k] >= CarryAfter)
+                int length = Math.Min(Strip, values.Length - start);
+                Classify(data + start, length, strip);
+                double* own = mass == null ? null : mass + start;
+
+                // A strip is no longer than what a cell takes between two carries: each comes up at most once in it.
+                int full = _vectors == 1
+                    ? AddLow(data + start, own, length, strip, records, counts)
+                    : AddHigh(data + start, own, length, strip, records, counts, _vectors, _stride);
+                for (int i = 0; i < full; i++)
                 {
-                    Settle(records + (2L * _side * k), states[k] / CarryAfter);
+                    Carry(records, (int)strip[i]);
                 }
             }
         }
     }
 
-    // place ← place + record without loss (Knuth), record ← 0.
-    [MethodImpl(MethodImplOptions.NoInlining)]
-    private int Carry(double* record, int state)
+    // A record: the sums, then the cell's lower end, the largest double in it, and the reciprocal of its width, 0 where it holds one double or none, or is
+    // an outer one that no window reads. Sums and ends of low degrees share one line of the cache.
+    private double* Measure(int cells)
     {
-        int place = (state / CarryAfter) - 1; // the counter has just run over into the place
-        int width = 2 * _side;
-        double* sums;
-        if (place == 0)
+        const double narrowest = 1e-290; // the reciprocal stays finite
+        _stride = ((4 * _vectors) + 4 + 7) / 8 * 8;
+        double* records = _records.Of((long)_stride * cells);
+        NativeMemory.Clear(records, (nuint)((long)_stride * cells * sizeof(double)));
+        double* cut = Breakpoints;
+        for (int k = 1; k < cells - 1; k++)
         {
-            place = ++_carries;
-            sums = _carried.Pointer + (2L * width * (place - 1));
-            new Span<double>(sums, 2 * width).Clear();
-        }
-        else
-        {
-            sums = _carried.Pointer + (2L * width * (place - 1));
+            double* ends = records + ((long)_stride * k) + (4 * _vectors);
+            ends[0] = cut[k - 1];
+            ends[1] = Math.BitDecrement(cut[k]);
+            double width = ends[1] - ends[0];
+            ends[2] = width > narrowest ? 1 / width : 0;
         }
 
+        return records;
+    }
+
+    // A place of the cell's own ← place + record without loss (Knuth), record ← 0.
+    private void Carry(double* records, int cell)
+    {
+        int width = 4 * _vectors;
+        if (_places[cell] == 0)
+        {
+            _places[cell] = ++_carries;
+            new Span<double>(_carried.Pointer + (2L * width * (_carries - 1)), 2 * width).Clear();
+        }
+
+        double* record = records + ((long)_stride * cell);
+        double* sums = _carried.Pointer + (2L * width * (_places[cell] - 1));
         for (int t = 0; t < width; t += 4)
         {
             Vector256<double> a = Vector256.Load(sums + t);
@@ -65,200 +88,104 @@ internal sealed unsafe partial class CompactCells
             sum.Store(sums + t);
             Vector256<double>.Zero.Store(record + t);
         }
-
-        return place * CarryAfter;
     }
 
-    private void Settle(double* record, int place)
-    {
-        int width = 2 * _side;
-        Carry(record, (place + 1) * CarryAfter);
-        double* sums = _carried.Pointer + (2L * width * (place - 1));
-        for (int t = 0; t < width; t++)
-        {
-            record[t] = sums[t] + sums[width + t];
-        }
-    }
-
+    // One vector (1, b², bc, c²), b and c the distances from the two ends of the cell as shares of its width. Leaves the cells to be carried at the front of the list.
     [MethodImpl(MethodImplOptions.AggressiveOptimization)]
-    private void AddAll(double* values, double* weights, int count, double* records, int* states)
+    private static int AddLow(double* values, double* weights, int count, long* cells, double* records, int* counts)
     {
-        long* cells = stackalloc long[Strip];
-        for (int start = 0; start < count; start += Strip)
+        int full = 0;
+        for (int i = 0; i < count; i++)
         {
-            int strip = Math.Min(Strip, count - start);
-            Classify(values + start, strip, cells);
-            double* mass = weights == null ? null : weights + start;
-
-            // A strip is no longer than the counters: each runs over at most once in it.
-            int full = _side == 4
-                ? AddLow(values + start, mass, strip, cells, records, states)
-                : AddHigh(values + start, mass, strip, cells, records, states);
-            for (int i = 0; i < full; i++)
+            double x = values[i];
+            double* record = records + (8 * cells[i]);
+            Vector256<double> b = Vector256.Create((x - record[4]) * record[6]);
+            Vector256<double> c = Vector256.Create((record[5] - x) * record[6]);
+            Vector256<double> term = Squares(b, c);
+            if (weights == null)
             {
-                long k = cells[i];
-                states[k] = Carry(records + (2 * _side * k), states[k]) + (states[k] & (CarryAfter - 1));
-            }
-        }
-    }
-
-    [MethodImpl(MethodImplOptions.AggressiveOptimization)]
-    private void Classify(double* values, int count, long* cells)
-    {
-        Vector256<double> origin = Vector256.Create(_origin);
-        Vector256<double> scale = Vector256.Create(_scale);
-        Vector256<double> last = Vector256.Create(_bucketCount - 1.0);
-        Vector256<double> rounder = Vector256.Create(Rounder);
-        int i = 0;
-        for (; i + 4 <= count; i += 4)
-        {
-            Vector256<double> z = (Vector256.Load(values + i) - origin) * scale;
-            (Vector256.Min(Vector256.Max(z, Vector256<double>.Zero), last) + rounder).AsInt64().Store(cells + i);
-        }
-
-        for (; i < count; i++)
-        {
-            cells[i] = Bucket(values[i]);
-        }
-
-        double* cut = Breakpoints;
-        fixed (int* buckets = _buckets)
-        {
-            if (_mostInBucket <= 2)
-            {
-                for (i = 0; i < count; i++)
+                Vector256<double> sum = Vector256.Load(record) + term;
+                sum.Store(record);
+                if (sum.ToScalar() == CarryAfter)
                 {
-                    int k = buckets[(int)cells[i]];
-                    double x = values[i];
-                    cells[i] = k + AtLeast(x, cut[k]) + AtLeast(x, cut[k + 1]);
-                }
-            }
-            else if (_mostInBucket <= 4)
-            {
-                for (i = 0; i < count; i++)
-                {
-                    int k = buckets[(int)cells[i]];
-                    double x = values[i];
-                    cells[i] = k + AtLeast(x, cut[k]) + AtLeast(x, cut[k + 1]) + AtLeast(x, cut[k + 2]) + AtLeast(x, cut[k + 3]);
+                    cells[full++] = cells[i];
                 }
             }
             else
             {
-                for (i = 0; i < count; i++)
+                (Vector256.Load(record) + (term * Vector256.Create(weights[i]))).Store(record);
+                if ((++counts[cells[i]] & (CarryAfter - 1)) == 0)
                 {
-                    int bucket = (int)cells[i];
-                    double x = values[i];
-                    int low = buckets[bucket];
-                    int high = buckets[bucket + 1];
-                    while (low < high)
-                    {
-                        int middle = (low + high) >> 1;
-                        if (cut[middle] <= x)
-                        {
-                            low = middle + 1;
-                        }
-                        else
-                        {
-                            high = middle;
-                        }
-                    }
-
-                    cells[i] = low;
+                    cells[full++] = cells[i];
                 }
             }
         }
+
+        return full;
     }
 
-    // 1 when x ≥ cut, without a branch: the sign bit of x − cut, which is exact in sign.
+    // Further vectors for higher degrees: with D = 4·vectors − 2 all bᵉcᴰ⁻ᵉ, the lowest three powers of b beside the count.
+    [MethodImpl(MethodImplOptions.AggressiveOptimization)]
+    private static int AddHigh(double* values, double* weights, int count, long* cells, double* records, int* counts, int vectors, int stride)
+    {
+        int full = 0;
+        Vector256<double> one = Vector256<double>.One;
+        for (int i = 0; i < count; i++)
+        {
+            double x = values[i];
+            double* record = records + (stride * cells[i]);
+            double* ends = record + (4 * vectors);
+            Vector256<double> mass = weights == null ? one : Vector256.Create(weights[i]);
+            Vector256<double> b = Vector256.Create((x - ends[0]) * ends[2]);
+            Vector256<double> c = Vector256.Create((ends[1] - x) * ends[2]);
+            Vector256<double> b2 = b * b, c2 = c * c;
+            Vector256<double> b4 = b2 * b2, c4 = c2 * c2;
+            Vector256<double> high = Cubes(b, c) * (b2 * b) * mass;
+            Vector256<double> power = c4; // of c beside the lowest three of b
+
+            // Each vector has b⁴ for the c⁴ of the one before.
+            for (int r = 1; r < vectors; r++)
+            {
+                Vector256<double> term = high;
+                for (int q = r; q < vectors - 1; q++)
+                {
+                    term *= c4;
+                }
+
+                (Vector256.Load(record + (4 * r)) + term).Store(record + (4 * r));
+                high *= b4;
+                power = r == 1 ? power : power * c4;
+            }
+
+            Vector256<double> low = Squares(b, c) * CountFirst(power) * mass;
+            Vector256<double> sum = Vector256.Load(record) + low;
+            sum.Store(record);
+            if (weights == null ? sum.ToScalar() == CarryAfter : (++counts[cells[i]] & (CarryAfter - 1)) == 0)
+            {
+                cells[full++] = cells[i];
+            }
+        }
+
+        return full;
+    }
+
+    // (1, b², bc, c²)
     [MethodImpl(MethodImplOptions.AggressiveInlining)]
-    private static int AtLeast(double x, double cut) => 1 + (int)(BitConverter.DoubleToInt64Bits(x - cut) >> 63);
+    private static Vector256<double> Squares(Vector256<double> b, Vector256<double> c) => CountFirst(Mix(b, c, 8)) * CountFirst(Mix(b, c, 12));
 
-    // Degrees up to 3: one vector (1, b, b², b³) from either end. Leaves the cells whose counters ran over at the front of the list.
-    [MethodImpl(MethodImplOptions.AggressiveOptimization)]
-    private int AddLow(double* values, double* weights, int count, long* cells, double* records, int* states)
-    {
-        Vector256<double> odd = Vector256.Create(0L, -1, 0, -1).AsDouble();
-        Vector256<double> high = Vector256.Create(0L, 0, -1, -1).AsDouble();
-        Vector256<double> one = Vector256<double>.One;
-        double* cut = Breakpoints;
-        double* uppers = Uppers;
-        double inverse = _inverse;
-        int full = 0;
-        for (int i = 0; i < count; i++)
-        {
-            long k = cells[i];
-            double x = values[i];
-            Vector256<double> b = Vector256.Create((x - cut[k - 1]) * inverse);
-            Vector256<double> c = Vector256.Create((uppers[k] - x) * inverse);
-            Vector256<double> up = Vector256.ConditionalSelect(odd, b, one) * Vector256.ConditionalSelect(high, b * b, one);
-            Vector256<double> down = Vector256.ConditionalSelect(odd, c, one) * Vector256.ConditionalSelect(high, c * c, one);
-            if (weights != null)
-            {
-                Vector256<double> w = Vector256.Create(weights[i]);
-                up *= w;
-                down *= w;
-            }
+    // (b³, b²c, bc², c³)
+    [MethodImpl(MethodImplOptions.AggressiveInlining)]
+    private static Vector256<double> Cubes(Vector256<double> b, Vector256<double> c) => Mix(b, c, 14) * Mix(b, c, 12) * Mix(b, c, 8);
 
-            double* record = records + (8 * k);
-            (Vector256.Load(record) + up).Store(record);
-            (Vector256.Load(record + 4) + down).Store(record + 4);
-            int state = states[k] + 1;
-            states[k] = state;
-            cells[full] = k;
-            full += (state & (CarryAfter - 1)) == 0 ? 1 : 0;
-        }
+    // 1 in the first lane, which counts.
+    [MethodImpl(MethodImplOptions.AggressiveInlining)]
+    private static Vector256<double> CountFirst(Vector256<double> a) => Avx.IsSupported
+        ? Avx.Blend(a, Vector256<double>.One, 1)
+        : a.WithElement(0, 1);
 
-        return full;
-    }
-
-    // Higher degrees: further vectors, each b⁴ times the one before.
-    [MethodImpl(MethodImplOptions.AggressiveOptimization)]
-    private int AddHigh(double* values, double* weights, int count, long* cells, double* records, int* states)
-    {
-        Vector256<double> odd = Vector256.Create(0L, -1, 0, -1).AsDouble();
-        Vector256<double> high = Vector256.Create(0L, 0, -1, -1).AsDouble();
-        Vector256<double> one = Vector256<double>.One;
-        double* cut = Breakpoints;
-        double* uppers = Uppers;
-        double inverse = _inverse;
-        int side = _side;
-        int full = 0;
-        for (int i = 0; i < count; i++)
-        {
-            long k = cells[i];
-            double x = values[i];
-            Vector256<double> b = Vector256.Create((x - cut[k - 1]) * inverse);
-            Vector256<double> c = Vector256.Create((uppers[k] - x) * inverse);
-            Vector256<double> b2 = b * b;
-            Vector256<double> c2 = c * c;
-            Vector256<double> up = Vector256.ConditionalSelect(odd, b, one) * Vector256.ConditionalSelect(high, b2, one);
-            Vector256<double> down = Vector256.ConditionalSelect(odd, c, one) * Vector256.ConditionalSelect(high, c2, one);
-            if (weights != null)
-            {
-                Vector256<double> w = Vector256.Create(weights[i]);
-                up *= w;
-                down *= w;
-            }
-
-            Vector256<double> b4 = b2 * b2;
-            Vector256<double> c4 = c2 * c2;
-            double* record = records + (2 * side * k);
-            (Vector256.Load(record) + up).Store(record);
-            (Vector256.Load(record + side) + down).Store(record + side);
-            for (int t = 4; t < side; t += 4)
-            {
-                up *= b4;
-                down *= c4;
-                (Vector256.Load(record + t) + up).Store(record + t);
-                (Vector256.Load(record + side + t) + down).Store(record + side + t);
-            }
-
-            int state = states[k] + 1;
-            states[k] = state;
-            cells[full] = k;
-            full += (state & (CarryAfter - 1)) == 0 ? 1 : 0;
-        }
-
-        return full;
-    }
+    // The lanes of b but for those of c that the bits name.
+    [MethodImpl(MethodImplOptions.AggressiveInlining)]
+    private static Vector256<double> Mix(Vector256<double> b, Vector256<double> c, [System.Diagnostics.CodeAnalysis.ConstantExpected] byte bits) => Avx.IsSupported
+        ? Avx.Blend(b, c, bits)
+        : Vector256.ConditionalSelect(Vector256.Create(-(bits & 1L), -((bits >> 1) & 1L), -((bits >> 2) & 1L), -((bits >> 3) & 1L)).AsDouble(), c, b);
 }

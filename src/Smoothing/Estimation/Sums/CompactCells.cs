@@ -6,9 +6,11 @@ namespace Smoothing.Estimation;
 /// <summary>Exact sums of polynomial kernels at many points over unsorted values: one pass over the values, no sort of them.</summary>
 /// <remarks>
 /// <para>Method: the ends x ± h of all windows and the points x themselves cut the line into cells. Every cell lies wholly inside or
-/// outside each half window, so its values enter by their moments about the cell's lower and upper end alone. Values find their
-/// cell through a table of equal buckets and a few comparisons with the breakpoints, which are exact: rounded to the
-/// doubles that separate inside from outside. Windows then slide over the cells (<see cref="SlidingMoments"/>).</para>
+/// outside each half window, so its values enter by their moments about the cell's lower and upper end alone. Both come, without a
+/// difference, from one set of sums Σ bᵉcᴰ⁻ᵉ, b and c the distances from the two ends as shares of the cell: every sum is positive, and b + c = 1
+/// lowers the degree by adding neighbours. Values find their cell through a table of equal buckets and a few comparisons with the
+/// breakpoints, which are exact: rounded to the doubles that separate inside from outside. Windows then slide over the cells
+/// (<see cref="SlidingMoments"/>).</para>
 /// <para>Validity: finite values, ends inside the range of doubles. Dominant error: the kernel's own condition, see
 /// <see cref="EdgeMoments"/>. Many equal terms would drift; a cell's sums move to a compensated place of its own after every 256 values.</para>
 /// </remarks>
@@ -22,6 +24,7 @@ internal sealed unsafe partial class CompactCells
     private readonly AlignedRoom _breakpoints = new();
     private readonly AlignedRoom _records = new();
     private readonly AlignedRoom _carried = new();
+    private readonly AlignedRoom _moments = new();
     private readonly AlignedRoom _front = new();
     private double[] _sortedPoints = [];
     private int[] _order = [];
@@ -29,7 +32,8 @@ internal sealed unsafe partial class CompactCells
     private int[] _middle = [];
     private int[] _upper = [];
     private int[] _buckets = [];
-    private int[] _states = []; // for each cell: values taken since the last carry in the low 8 bits, 1 + its place among the carried above
+    private int[] _places = []; // for each cell: 1 + its place among the carried, 0 without one
+    private int[] _counts = []; // values taken, where weights stand in the place of the count
     private int _carries;
     private int _points;
     private int _bucketCount;
@@ -38,12 +42,10 @@ internal sealed unsafe partial class CompactCells
     private double _scale;
     private double _inverse;
     private int _degree;
-    private int _side; // doubles per side of a record: a multiple of four
+    private int _vectors; // of four sums per record
+    private int _stride;  // doubles from record to record
 
     private double* Breakpoints => _breakpoints.Pointer + 8; // [−1] is readable
-
-    // The largest double below each breakpoint: the upper end that a cell's values are measured from.
-    private double* Uppers => Breakpoints + (3 * _points) + Padding;
 
     /// <summary>destination[j] = factor · Σ w P(s) over the closed window of half width <paramref name="bandwidth"/> about x_j, in any order of x; no infinities in x.</summary>
     public void Evaluate(
@@ -52,7 +54,7 @@ internal sealed unsafe partial class CompactCells
         _points = x.Length;
         _inverse = 1 / bandwidth;
         _degree = degree;
-        _side = (degree / 4 * 4) + 4;
+        _vectors = (degree + 5) / 4;
         Arrange(x);
         CutLine(bandwidth);
         FillBuckets();
@@ -89,7 +91,7 @@ internal sealed unsafe partial class CompactCells
     private void CutLine(double bandwidth)
     {
         int count = 3 * _points;
-        _breakpoints.Of(8 + (2L * (count + Padding)));
+        _breakpoints.Of(8L + count + Padding);
         double* cut = Breakpoints;
         int a = 0, b = 0, c = 0;
         double lower = LowerEnd(0, bandwidth), upper = UpperEnd(0, bandwidth);
@@ -119,12 +121,6 @@ internal sealed unsafe partial class CompactCells
         for (int k = 0; k < Padding; k++)
         {
             cut[count + k] = double.PositiveInfinity;
-        }
-
-        double* uppers = Uppers;
-        for (int k = 0; k <= count; k++)
-        {
-            uppers[k] = Math.BitDecrement(cut[k]);
         }
     }
 
