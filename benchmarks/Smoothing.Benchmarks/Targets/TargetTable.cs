@@ -13,7 +13,7 @@ internal static class TargetTable
         int rounds = args.Length > 0 ? int.Parse(args[0], CultureInfo.InvariantCulture) : 11;
         string only = args.Length > 1 ? args[1] : "";
         Console.WriteLine(FormattableString.Invariant($"{"target",-7} {"reached",9} {"limit",7}  {"job ms",9} {"base ms",9}  measurement"));
-        foreach (Func<Target> make in (IEnumerable<Func<Target>>)[.. GaussianTargets.All, .. CompactTargets.All])
+        foreach (Func<Target> make in (IEnumerable<Func<Target>>)[.. GaussianTargets.All, .. PairTargets.All, .. CompactTargets.All])
         {
             Target target = make();
             if (only.Length > 0 && target.Id != only)

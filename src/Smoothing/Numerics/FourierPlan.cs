@@ -1,9 +1,10 @@
 using System.Numerics;
+using System.Numerics.Tensors;
 using MathNet.Numerics.IntegralTransforms;
 
 namespace Smoothing.Numerics;
 
-/// <summary>Complex discrete Fourier transforms of power-of-two length, in place, on separate real and imaginary parts.</summary>
+/// <summary>Complex discrete Fourier transforms of any length, in place, on separate real and imaginary parts; powers of two are fast.</summary>
 /// <remarks>Forward: X_k = Σ_j x_j exp(−2πi jk/N), no factor. Inverse: the conjugate sum with the factor 1/N.</remarks>
 internal static class FourierPlan
 {
@@ -13,6 +14,21 @@ internal static class FourierPlan
 
     private static void Run(Span<double> real, Span<double> imaginary, bool forward)
     {
+        if (int.IsPow2(real.Length))
+        {
+            if (forward)
+            {
+                StockhamTransform.Forward(real, imaginary);
+                return;
+            }
+
+            // The conjugate sum is the forward one with the parts exchanged.
+            StockhamTransform.Forward(imaginary, real);
+            TensorPrimitives.Divide(real, (double)real.Length, real);
+            TensorPrimitives.Divide(imaginary, (double)real.Length, imaginary);
+            return;
+        }
+
         var work = new Complex[real.Length];
         for (int i = 0; i < work.Length; i++)
         {

@@ -56,9 +56,12 @@ internal sealed unsafe class MomentCells
         return exponent is > -1000 and < 1000 && Math.Abs(largest) <= Math.ScaleB(1, Math.Min(1000, exponent + 900));
     }
 
-    public static MomentCells Of(Sample sample, double bandwidth)
+    public static MomentCells Of(Sample sample, double bandwidth) => OfWidth(sample, ExponentFor(bandwidth));
+
+    /// <summary>Cells 2^<paramref name="exponent"/> wide, which <see cref="CanIndex"/> has allowed.</summary>
+    public static MomentCells OfWidth(Sample sample, int exponent)
     {
-        var cells = new MomentCells(ExponentFor(bandwidth));
+        var cells = new MomentCells(exponent);
         double low = Math.Floor(sample.Minimum * cells.Inverse), high = Math.Floor(sample.Maximum * cells.Inverse);
         double span = high - low + 1;
         if (span <= Math.Max(LargestDense, sample.Count / 4) && Math.Abs(low) < 4e15 && Math.Abs(high) < 4e15)
