@@ -39,6 +39,12 @@ public enum CautionKind
     /// <summary>The data contradict the smooth curve at a finer scale, and the limits are widened there.</summary>
     FineStructure,
 
+    /// <summary>Smoothing moves the curve by more than the half-width of its band somewhere.</summary>
+    SmoothingBias,
+
+    /// <summary>The tests for groups are known to err on such values, or stopped early.</summary>
+    Groups,
+
     /// <summary>A part of the answer cannot be given from condensed data.</summary>
     Condensed,
 }

@@ -1,3 +1,4 @@
+using System.Runtime.CompilerServices;
 using Smoothing.Bandwidths;
 using Smoothing.Estimation;
 using Smoothing.Inference;
@@ -9,7 +10,7 @@ namespace Smoothing;
 /// <summary>The one door: data in, a complete answer out.</summary>
 /// <remarks>
 /// Checks the values, chooses the smoothing, draws the curve with its band, answers the questions in <see cref="StudyOptions"/>, and says how
-/// far each answer can be trusted. Immutable and safe to share between threads;  The same input and seed give the same report, byte for byte, in any culture and on any number of threads.
+/// far each answer can be trusted. Immutable and safe to share between threads. The same input and seed give the same report, byte for byte, in any culture and on any number of threads.
 /// An estimate informs a decision; where people can be hurt it replaces no standard, code or licensed judgement.
 /// </remarks>
 public sealed partial class DensityStudy
@@ -21,6 +22,7 @@ public sealed partial class DensityStudy
     {
         Options = options;
         Sample = sample;
+        _progress = new StudyProgress(options.Progress);
         Name = TextCleaner.Name(options.Name.Length > 0 ? options.Name : sample.Name);
         Unit = TextCleaner.Name(options.Unit.Length > 0 ? options.Unit : sample.Unit);
         (Atoms, CurveSample) = StudyAtoms.TakeOut(sample);
@@ -29,19 +31,27 @@ public sealed partial class DensityStudy
         Density = Density.Of(CurveSample, options.Kernel, Bandwidth, new DensityOptions { Support = options.Support, Boundary = options.Boundary });
         Picture = StudySteps.PictureRange(CurveSample, Bandwidth, options);
         options.Cancellation.ThrowIfCancellationRequested();
-        options.Progress?.Report(0.2);
+        _progress.Report(StudyProgress.Part.Curve, 0.4);
         Uncertainty = StudySteps.Trust(Density, Bandwidth, options);
         Band = Uncertainty?.Band(Picture.Lower, Picture.Upper, options.Points);
         Curve = Tabulate();
         Peaks = StudyPeaks.Of(Density);
         options.Cancellation.ThrowIfCancellationRequested();
-        options.Progress?.Report(0.4);
+        _progress.Report(StudyProgress.Part.Curve, 0.8);
         SerialDependence dependence = StudySteps.Serial(options);
         Limits = [.. options.Limits.Select(limit => new LimitAnswer(limit, Shares.Beyond(sample, limit, options.Level, dependence: dependence)))];
         Quantiles = [.. options.Probabilities.Select(p => Inference.Quantiles.Of(sample, p, options.Level, dependence: dependence))];
-        options.Progress?.Report(1);
+        Reference = StudyComparison.Reference(options, this);
+        LimitChanges = StudyComparison.Changes(this);
+        Plan = PrecisionPlan.Of(StudySteps.Observations(sample), Bandwidth.Status == BandwidthStatus.RoundingFloor);
+        _progress.Report(StudyProgress.Part.Curve, 1);
+        _groups = new(FindGroups);
+        _comparison = new(Compare);
+        _half = new(() => Variant(0.5));
+        _double = new(() => Variant(2));
+        _sharp = new(Sharpen);
         _cautions = new(() => StudyCautions.Of(this));
-        _report = new(() => StudyReport.Of(this));
+        _report = new(WriteReport);
     }
 
     /// <summary>Studies a column of values.</summary>
@@ -50,10 +60,11 @@ public sealed partial class DensityStudy
     /// <returns>The study.</returns>
     /// <exception cref="ArgumentException">Values, weights or options are unusable; the message names the first fault and its remedy.</exception>
     /// <exception cref="OperationCanceledException">The options' cancellation was asked for.</exception>
+    [OverloadResolutionPriority(1)]
     public static DensityStudy Of(ReadOnlySpan<double> values, StudyOptions? options = null)
     {
         options ??= new StudyOptions();
-        return Of(Sample.Of(values, new SampleOptions { Weights = options.Weights, WeightMeaning = options.WeightMeaning, Missing = options.Missing, Name = options.Name, Unit = options.Unit }), options);
+        return Of(Sample.Of(values, StudySteps.Columns(options)), options);
     }
 
     /// <summary>Studies a sample; its own weights, name and unit hold unless the options give others.</summary>
@@ -147,6 +158,18 @@ public sealed partial class DensityStudy
     /// <summary>The picture alone, as an SVG element.</summary>
     /// <returns>One <c>svg</c> element with a text alternative.</returns>
     public string ToSvg() => SvgFigure.Draw(_report.Value.Figure!);
+
+    /// <summary>The picture of the comparison with a reference alone: both curves, and where they differ beyond chance.</summary>
+    /// <returns>One <c>svg</c> element with a text alternative; null where <see cref="Comparison"/> is.</returns>
+    public string? ToComparisonSvg() => StudyFigure.Compared(this) is { } figure ? SvgFigure.Draw(figure) : null;
+
+    private ReportModel WriteReport()
+    {
+        ReportModel report = StudyReport.Of(this);
+        _progress.Report(StudyProgress.Part.Groups, 1);
+        _progress.Report(StudyProgress.Part.Comparison, 1);
+        return report;
+    }
 
     private Curve Tabulate()
     {

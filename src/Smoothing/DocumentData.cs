@@ -7,11 +7,12 @@ namespace Smoothing;
 /// <param name="Minimum">Smallest value.</param>
 /// <param name="Maximum">Largest value.</param>
 /// <param name="Mean">Mean.</param>
-/// <param name="StandardDeviation">Standard deviation, divisor n − 1.</param>
+/// <param name="StandardDeviation">Standard deviation, divisor n − 1; the largest double where it exceeds that.</param>
 /// <param name="TiedShare">Share of values that are not alone in their place.</param>
 /// <param name="RoundingStep">The step the values are recorded in; null when none was found.</param>
 /// <param name="HeapingStep">A coarser step that too many values sit on; null when none was found.</param>
 /// <param name="Support">The declared limits of the range; null when none was declared.</param>
+/// <param name="LagOneCorrelation">Lag-1 autocorrelation in the order of the rows.</param>
 public sealed record DocumentData(
     long Count,
     double EffectiveCount,
@@ -23,4 +24,5 @@ public sealed record DocumentData(
     double TiedShare,
     double? RoundingStep,
     double? HeapingStep,
-    DocumentInterval? Support);
+    DocumentInterval? Support,
+    double LagOneCorrelation = 0);

@@ -11,13 +11,7 @@ internal static class MarkdownReport
         text.Append("# ").Append(Escape(report.Title)).Append("\n\n");
         if (report.Figure is not null)
         {
-            text.Append("```text\n");
-            foreach (string line in TextFigure.Draw(report.Figure))
-            {
-                text.Append(line).Append('\n');
-            }
-
-            text.Append("```\n\n").Append(Escape(report.Figure.Alternative)).Append("\n\n");
+            Picture(text, report.Figure);
         }
 
         foreach (ReportSection section in report.Sections)
@@ -27,7 +21,13 @@ internal static class MarkdownReport
             bool afterBullet = false;
             foreach (ReportBlock block in section.Blocks)
             {
-                if (block is ReportBlock.Table table)
+                if (block is ReportBlock.Picture picture)
+                {
+                    text.Append(afterBullet ? "\n" : "");
+                    Picture(text, picture.Figure);
+                    afterBullet = false;
+                }
+                else if (block is ReportBlock.Table table)
                 {
                     text.Append(afterBullet ? "\n" : "");
                     Row(text, table.Headings);
@@ -51,6 +51,18 @@ internal static class MarkdownReport
         }
 
         return text.Append("## Method\n\n").Append(Escape(report.Method)).Append('\n').ToString();
+    }
+
+    private static void Picture(StringBuilder text, FigureModel figure)
+    {
+        text.Append("```text\n");
+        foreach (string line in TextFigure.Draw(figure))
+        {
+            // Three backticks in a name would end the block.
+            text.Append(line.Replace('`', '\'')).Append('\n');
+        }
+
+        text.Append("```\n\n").Append(Escape(figure.Alternative)).Append("\n\n");
     }
 
     private static void Row(StringBuilder text, IReadOnlyList<string> cells)

@@ -6,7 +6,7 @@ internal sealed record ReportModel(string Title, FigureModel? Figure, IReadOnlyL
 /// <summary>One heading and what stands under it.</summary>
 internal sealed record ReportSection(string Heading, IReadOnlyList<ReportBlock> Blocks);
 
-/// <summary>A paragraph, or a table with a header row.</summary>
+/// <summary>A paragraph, a picture, or a table with a header row.</summary>
 internal abstract record ReportBlock
 {
     private ReportBlock()
@@ -15,6 +15,9 @@ internal abstract record ReportBlock
 
     /// <summary>One or more sentences.</summary>
     public sealed record Paragraph(string Text) : ReportBlock;
+
+    /// <summary>A further picture.</summary>
+    public sealed record Picture(FigureModel Figure) : ReportBlock;
 
     /// <summary>Columns with headings; the first column names the row.</summary>
     public sealed record Table(IReadOnlyList<string> Headings, IReadOnlyList<IReadOnlyList<string>> Rows) : ReportBlock;

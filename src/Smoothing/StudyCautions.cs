@@ -1,5 +1,6 @@
 using Smoothing.Bandwidths;
 using Smoothing.Estimation;
+using Smoothing.Inference;
 using Smoothing.Numerics;
 using Smoothing.Samples;
 
@@ -10,6 +11,9 @@ internal static class StudyCautions
 {
     // Common practice, without a source: below fifty values a curve shows the broad place of the data and little more.
     private const int Few = 50;
+
+    // So many peaks beyond those established and the picture is mostly accidents.
+    private const int Accidents = 5;
 
     public static IReadOnlyList<Caution> Of(DensityStudy study)
     {
@@ -23,7 +27,7 @@ internal static class StudyCautions
 
         if (sample.EffectiveCount < Few)
         {
-            cautions.Add(new(CautionKind.FewValues, Guard.Text($"Only {StudyNumbers.Count(Math.Floor(sample.EffectiveCount))} values: the curve shows where they lie and little of their shape. About {4 * Few} would show two groups apart.")));
+            cautions.Add(new(CautionKind.FewValues, Guard.Text($"Only {StudyNumbers.CountWord(Math.Floor(sample.EffectiveCount))} {(sample.EffectiveCount < 2 ? "value" : "values")}: the curve shows where they lie and little of their shape. About {4 * Few} would show two groups apart.")));
         }
 
         if (sample.IsWeighted && sample.WeightMeaning == WeightMeaning.Relative && sample.EffectiveCount < 0.8 * sample.Count)
@@ -34,12 +38,9 @@ internal static class StudyCautions
         Rounding(study, cautions);
         Ends(study, cautions);
         Smoothing(study, cautions);
-        if (study.Uncertainty is { Contradicted.Count: > 0 } trust)
-        {
-            string places = string.Join(", ", trust.Contradicted.Take(4).Select(c => Guard.Text($"{StudyPeaks.Place(study, c.Lower)} to {StudyPeaks.Place(study, c.Upper)}")));
-            cautions.Add(new(CautionKind.FineStructure, Guard.Text($"The data contradict the smooth curve at a finer scale from {places}: there may be something narrower than the smoothing shows, and the band is widened there.")));
-        }
-
+        FineScale(study, cautions);
+        Bias(study, cautions);
+        Groups(study, cautions);
         Order(study, cautions);
         Outside(study, cautions);
         return cautions.AsReadOnly();
@@ -60,7 +61,7 @@ internal static class StudyCautions
 
         if (sample.RoundingUnit is { } unit && (study.Bandwidth.Status == BandwidthStatus.RoundingFloor || unit.Step > h))
         {
-            cautions.Add(new(CautionKind.Rounding, Guard.Text($"The values are rounded to {StudyNumbers.WithUnit(StudyNumbers.Significant(unit.Step, 3), study.Unit)}, and that limits the resolution: nothing finer can be seen. Finer records would show more.")));
+            cautions.Add(new(CautionKind.Rounding, Guard.Text($"The values are rounded to {StudyNumbers.WithUnit(StudyNumbers.AsGiven(unit.PrintedStep), study.Unit)}, and that limits the resolution: nothing finer can be seen. Finer records would show more.")));
         }
     }
 
@@ -71,20 +72,30 @@ internal static class StudyCautions
         {
             if (pile is not null && !study.Atoms.Any(a => a.Value == pile.Value))
             {
-                cautions.Add(new(CautionKind.PiledUp, Guard.Text($"{100 * pile.Share:F1} % of the values equal the {end} one, {StudyNumbers.WithUnit(StudyNumbers.AsGiven(pile.Value), study.Unit)}: if that is where recording stops, the true values lie {other} it and neither curve nor quantiles there mean anything. Use a method for censored values.")));
+                cautions.Add(new(CautionKind.PiledUp, Guard.Text($"{100 * pile.Share:F1} % of the values equal the {end} one, {StudyNumbers.WithUnit(StudyNumbers.AsGiven(pile.Value), study.Unit)}: {Stops(other)}")));
             }
         }
 
         foreach (Atom atom in study.Atoms)
         {
-            cautions.Add(new(CautionKind.Atom, Guard.Text($"The value {StudyNumbers.WithUnit(StudyNumbers.AsGiven(atom.Value), study.Unit)} alone holds {100 * atom.Share:F0} % of the values. It is no part of the curve, which is drawn for the rest; shares and quantiles count it.")));
+            // Zero is more often a true nothing (a dry day) than the end of a scale.
+            string? end = atom.Value == sample.Maximum ? "largest" : atom.Value == sample.Minimum && atom.Value != 0 ? "smallest" : null;
+            cautions.Add(new(CautionKind.Atom, Guard.Text($"The value {StudyNumbers.WithUnit(StudyNumbers.AsGiven(atom.Value), study.Unit)} alone holds {100 * atom.Share:F0} % of the values. It is no part of the curve, which is drawn for the rest; shares and quantiles count it.{(end is null ? "" : Guard.Text($" It is the {end} value: {Stops(end == "largest" ? "above" : "below")}"))}")));
         }
 
         if (study.Options.Support is null)
         {
             foreach (LimitFinding finding in LimitEvidence.Suspected(study.CurveSample))
             {
-                cautions.Add(new(CautionKind.UndeclaredLimit, finding.Statement));
+                // A point mass taken out there has been said, and leaves an abrupt end behind.
+                if (study.Atoms.Any(a => finding.IsLower ? a.Value <= finding.Limit : a.Value >= finding.Limit))
+                {
+                    continue;
+                }
+
+                string side = finding.IsLower ? "below" : "above";
+                string place = StudyNumbers.WithUnit(StudyReport.End(study.CurveSample, finding.Limit), study.Unit);
+                cautions.Add(new(CautionKind.UndeclaredLimit, Guard.Text($"The values stop abruptly at {place} instead of thinning out. If the quantity cannot lie {side} it, declare that as Support: the curve now runs past it and is too low before it.")));
             }
         }
 
@@ -94,12 +105,80 @@ internal static class StudyCautions
         }
     }
 
+    private static string Stops(string other) =>
+        Guard.Text($"if that is where recording stops (a duration still running, the end of a scale), the true values lie {other} it and neither curve nor quantiles there mean anything. Find out, and use a method for censored values if so.");
+
+    private static void FineScale(DensityStudy study, List<Caution> cautions)
+    {
+        if (study.Uncertainty is not { Contradicted.Count: > 0 } trust)
+        {
+            return;
+        }
+
+        // Stretches of several scales overlap; only what the picture shows is said.
+        var seen = new List<Interval>();
+        foreach (Interval c in trust.Contradicted.Where(c => c.Upper > study.Picture.Lower && c.Lower < study.Picture.Upper).OrderBy(c => c.Lower))
+        {
+            var inside = new Interval(Math.Max(c.Lower, study.Picture.Lower), Math.Min(c.Upper, study.Picture.Upper));
+            if (seen.Count > 0 && inside.Lower <= seen[^1].Upper)
+            {
+                seen[^1] = new Interval(seen[^1].Lower, Math.Max(seen[^1].Upper, inside.Upper));
+            }
+            else
+            {
+                seen.Add(inside);
+            }
+        }
+
+        if (seen.Count > 0)
+        {
+            string places = StudyNumbers.Listed([.. seen.Take(4).Select(s => StudyPeaks.Stretch(study, s, "from ", " to "))]);
+            cautions.Add(new(CautionKind.FineStructure, Guard.Text($"The data contradict the smooth curve at a finer scale {places}: there may be something narrower than the smoothing shows, and the band is widened there.")));
+        }
+    }
+
+    private static void Bias(DensityStudy study, List<Caution> cautions)
+    {
+        IReadOnlyList<Interval> stretches = StudyFigure.Biased(study);
+        if (stretches.Count > 0)
+        {
+            string places = StudyNumbers.Listed([.. stretches.Take(3).Select(s => StudyPeaks.Stretch(study, s, "from ", " to ") + (study.Uncertainty!.BiasAt((s.Lower + s.Upper) / 2).Estimate < 0 ? " too low" : " too high"))]);
+            cautions.Add(new(CautionKind.SmoothingBias, Guard.Text($"Smoothing draws the curve {places}, by more than the band reaches to either side. The dotted line of the picture is nearer the truth there, and the band is corrected for it: read heights from those.")));
+        }
+    }
+
+    private static void Groups(DensityStudy study, List<Caution> cautions)
+    {
+        // Few values, dependence and unsaid limits have cautions of their own.
+        foreach ((GroupWarning kind, string text) in study.Groups?.Findings ?? [])
+        {
+            if (kind == GroupWarning.RoundingStops)
+            {
+                cautions.Add(new(CautionKind.Groups, Guard.Text($"Whether there are more than {StudyNumbers.CountWord(study.Groups!.AtLeast)} groups cannot be said: the values are rounded too coarsely for it. Finer records would tell.")));
+            }
+            else if (kind is GroupWarning.Flat or GroupWarning.Weights)
+            {
+                cautions.Add(new(CautionKind.Groups, text));
+            }
+        }
+    }
+
     private static void Smoothing(DensityStudy study, List<Caution> cautions)
     {
         BandwidthChoice choice = study.Bandwidth;
         if (choice.Status is BandwidthStatus.Replaced or BandwidthStatus.EndOfSearch)
         {
-            cautions.Add(new(CautionKind.Smoothing, Guard.Text($"Smoothing: {StudyMethod.Rule(choice)}. Compare half and double before reading details.")));
+            string what = choice.Status == BandwidthStatus.EndOfSearch ? "The search for the smoothing ended at its limit without a solution inside"
+                : "One of the ways of choosing the smoothing found no solution";
+            string width = StudyNumbers.WithUnit(StudyNumbers.Significant(choice.Value, 2), study.Unit);
+            cautions.Add(new(CautionKind.Smoothing, Guard.Text($"{what}; h = {width} was taken ({StudyMethod.Rule(choice)}), and the curve may show too much or too little. Compare half and double of it before reading details.")));
+        }
+
+        int peaks = StudyPeaks.Named(study).Count;
+        if (study.Groups is { Tests.Count: > 0 } evidence && peaks > evidence.AtLeast + Accidents)
+        {
+            double wide = BandwidthRules.NormalReference(study.CurveSample, study.Options.Kernel, new BandwidthOptions { Support = study.Options.Support });
+            cautions.Add(new(CautionKind.Smoothing, Guard.Text($"The curve has {StudyNumbers.CountWord(peaks)} peaks where the tests establish {StudyNumbers.CountWord(evidence.AtLeast)}: it follows rounding or chance, and its details mean nothing. Give a wider bandwidth than {StudyNumbers.WithUnit(StudyNumbers.Significant(choice.Value, 2), study.Unit)}; for one plain hill it would be {StudyNumbers.WithUnit(StudyNumbers.Significant(wide, 2), study.Unit)}.")));
         }
 
         if (choice.CandidatesDisagree && choice.Candidates.Count > 1)
@@ -113,10 +192,41 @@ internal static class StudyCautions
     private static void Order(DensityStudy study, List<Caution> cautions)
     {
         Sample sample = study.Sample;
-        if (study.Options.TimeOrdered && sample.Count >= 20 && Math.Abs(sample.LagOneCorrelation) > sample.LagOneLimit)
+        double r = sample.LagOneCorrelation;
+        if (sample.Count < 20)
         {
-            cautions.Add(new(CautionKind.Dependence, Guard.Text($"Neighbours in time are correlated (lag one: {sample.LagOneCorrelation:F2}, chance stays within ±{sample.LagOneLimit:F2}): the values say less than their number. Intervals of shares and quantiles allow for it.")));
+            return;
         }
+
+        if (study.Options.TimeOrdered)
+        {
+            if (Math.Abs(r) > sample.LagOneLimit)
+            {
+                cautions.Add(new(CautionKind.Dependence, Guard.Text($"Neighbours in time {(r > 0 ? "resemble each other" : "alternate")} (lag-1 autocorrelation {r:F2}, chance stays within ±{sample.LagOneLimit:F2}): the values {(r > 0 ? "say less than their number" : "are no independent draws")}. Intervals of shares and quantiles and the band allow for it; the tests for groups do not.")));
+            }
+
+            return;
+        }
+
+        // Beyond three standard errors, and by enough to make intervals a twentieth too narrow: √((1 + r)/(1 − r)) at r = 0.05.
+        if (r > Math.Max(1.5 * sample.LagOneLimit, 0.05) && !IsSorted(sample.Values))
+        {
+            double independent = sample.Count * (1 - r) / (1 + r);
+            cautions.Add(new(CautionKind.Dependence, Guard.Text($"Neighbouring rows resemble each other (lag-1 autocorrelation {r:F2}, chance stays within ±{sample.LagOneLimit:F2}). If the rows stand in the order of time, they say about as much as {StudyNumbers.Count(Math.Max(1, Math.Floor(independent)))} independent values and the intervals here are too narrow: declare the order (TimeOrdered).")));
+        }
+    }
+
+    private static bool IsSorted(ReadOnlySpan<double> values)
+    {
+        bool up = true;
+        bool down = true;
+        for (int i = 1; i < values.Length && (up || down); i++)
+        {
+            up &= values[i] >= values[i - 1];
+            down &= values[i] <= values[i - 1];
+        }
+
+        return up || down;
     }
 
     private static void Outside(DensityStudy study, List<Caution> cautions)
@@ -130,7 +240,7 @@ internal static class StudyCautions
         if (outside > 0)
         {
             Sample sample = study.CurveSample;
-            cautions.Add(new(CautionKind.OutsidePicture, Guard.Text($"{(outside == 1 ? "One value lies" : StudyNumbers.Count(outside) + " values lie")} outside the picture, which would be flat otherwise (range {StudyNumbers.AsGiven(sample.Minimum)} to {StudyNumbers.WithUnit(StudyNumbers.AsGiven(sample.Maximum), study.Unit)}). All numbers count them.")));
+            cautions.Add(new(CautionKind.OutsidePicture, Guard.Text($"{(outside == 1 ? "One value lies" : StudyNumbers.Count(outside) + " values lie")} outside the picture, which would be flat otherwise (range {StudyReport.End(sample, sample.Minimum)} to {StudyNumbers.WithUnit(StudyReport.End(sample, sample.Maximum), study.Unit)}). All numbers count them.")));
         }
     }
 }

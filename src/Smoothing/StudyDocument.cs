@@ -19,6 +19,11 @@ namespace Smoothing;
 /// <param name="Quantiles">Quantiles.</param>
 /// <param name="Cautions">Warnings that apply.</param>
 /// <param name="Method">The method sentence.</param>
+/// <param name="Groups">Evidence for groups; null where none could be sought.</param>
+/// <param name="Comparison">Comparison with a reference; null without one.</param>
+/// <param name="AtHalf">The curve at half the bandwidth; null for a kernel with jumps.</param>
+/// <param name="AtDouble">The curve at double the bandwidth; null for a kernel with jumps.</param>
+/// <param name="Plan">Values needed for twice the precision.</param>
 public sealed record StudyDocument(
     int SchemaVersion,
     string Library,
@@ -33,7 +38,12 @@ public sealed record StudyDocument(
     IReadOnlyList<DocumentLimit> Limits,
     IReadOnlyList<DocumentQuantile> Quantiles,
     IReadOnlyList<DocumentCaution> Cautions,
-    string Method)
+    string Method,
+    DocumentGroups? Groups = null,
+    DocumentComparison? Comparison = null,
+    DocumentVariant? AtHalf = null,
+    DocumentVariant? AtDouble = null,
+    DocumentPlan? Plan = null)
 {
     /// <summary>The version of the schema that this library writes and reads.</summary>
     public const int CurrentSchema = 1;
@@ -80,6 +90,14 @@ public sealed record StudyDocument(
             }
         }
 
+        foreach ((string name, IReadOnlyList<double>? list) in new[] { ("difference", document.Comparison?.Difference), ("lower", document.Comparison?.Lower), ("upper", document.Comparison?.Upper) })
+        {
+            if (list?.Count != document.Comparison?.X?.Count)
+            {
+                throw new ArgumentException(Guard.Text($"comparison.x has {document.Comparison?.X?.Count ?? 0} numbers but comparison.{name} has {list?.Count ?? 0}: they belong together."), nameof(json));
+            }
+        }
+
         return document;
     }
 
@@ -100,5 +118,7 @@ public sealed record StudyDocument(
         : document.Quantiles is null || document.Quantiles.Any(q => q?.Interval is null) ? "quantiles"
         : document.Cautions is null || document.Cautions.Any(c => c is null) ? "cautions"
         : document.Method is null ? "method"
+        : document.Groups is { } groups && (groups.Tests is null || groups.Tests.Any(t => t is null) || groups.Peaks is null || groups.Peaks.Any(p => p?.LocationInterval is null || p.HeightInterval is null) || groups.Verdict is null) ? "a part of groups"
+        : document.Comparison is { } comparison && (comparison.Shifts is null || comparison.Shifts.Any(x => x?.Interval is null) || comparison.Limits is null || comparison.Limits.Any(l => l?.Interval is null) || comparison.Verdict is null) ? "a part of comparison"
         : null;
 }

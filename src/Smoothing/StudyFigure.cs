@@ -1,10 +1,12 @@
 using Smoothing.Estimation;
+using Smoothing.Inference;
+using Smoothing.Kernels;
 using Smoothing.Numerics;
 using Smoothing.Samples;
 
 namespace Smoothing;
 
-/// <summary>Collects what the picture of a study shows.</summary>
+/// <summary>Collects what the pictures of a study show.</summary>
 internal static class StudyFigure
 {
     // More ticks than this would run into one grey bar: values are then counted into as many strips.
@@ -13,6 +15,7 @@ internal static class StudyFigure
     // Below this share of the highest point the curve hugs the axis, and a mark on it would say nothing.
     private const double Foot = 0.03;
 
+    /// <summary>The picture of the report: curve, band, limits, peaks, data.</summary>
     public static FigureModel Of(DensityStudy study)
     {
         double share = study.CurveShare;
@@ -23,10 +26,11 @@ internal static class StudyFigure
             Lower = study.Band is null ? [] : [.. study.Band.Lower.Select(y => y * share)],
             Upper = study.Band is null ? [] : [.. study.Band.Upper.Select(y => y * share)],
             BandWords = Guard.Text($"{StudyNumbers.AsGiven(Math.Round(100 * study.Options.Level, 10))} % band"),
-            Biased = Biased(study),
+            Corrected = study.Band is null ? [] : [.. study.Band.Centre.Select(y => y * share)],
+            Biased = [.. Biased(study).Select(b => (b.Lower, b.Upper))],
             Limits = [.. study.Limits.Select(l => (l.Limit, Limit(study, l)))],
-            Peaks = [.. StudyPeaks.Named(study).Where(p => study.Picture.Contains(p.Location)).Select(p => (p.Location, p.Height * share, StudyPeaks.Place(study, p.Location)))],
-            Atoms = [.. study.Atoms.Select(a => (a.Value, Guard.Text($"{StudyNumbers.AsGiven(a.Value)}: {100 * a.Share:F0} %")))],
+            Peaks = [.. Seen(study).Select(p => (p.Location, p.Height * share, Around(study, p.Location)))],
+            Atoms = [.. study.Atoms.Select(a => (a.Value, Guard.Text($"{StudyNumbers.WithUnit(StudyNumbers.AsGiven(a.Value), study.Unit)}: {100 * a.Share:F0} % (not to scale)")))],
             Strip = Strip(study.CurveSample, study.Picture),
             Name = study.Name,
             Unit = study.Unit,
@@ -34,10 +38,48 @@ internal static class StudyFigure
         };
     }
 
-    // Stretches where the estimated bias is larger than half the width of the band.
-    private static List<(double From, double To)> Biased(DensityStudy study)
+    /// <summary>The picture of a comparison: both curves as the test smoothed them, and where they differ beyond chance; null without a comparison.</summary>
+    public static FigureModel? Compared(DensityStudy study)
     {
-        var stretches = new List<(double, double)>();
+        if (study.Comparison is not { } result)
+        {
+            return null;
+        }
+
+        Sample reference = StudyAtoms.TakeOut(study.Reference!).Others;
+        Interval other = StudySteps.PictureRange(reference, result.Band.FirstBandwidth, study.Options);
+        var range = new Interval(Math.Min(study.Picture.Lower, other.Lower), Math.Max(study.Picture.Upper, other.Upper));
+        double[] x = StudySteps.Grid(range, study.Options.Points);
+        DensityOptions? limits = study.Options.Support is { } support ? new DensityOptions { Support = support } : null;
+        var now = new double[x.Length];
+        var before = new double[x.Length];
+        Density.Of(study.CurveSample, Kernel.Gaussian, result.Band.SecondBandwidth, limits).Values(x, now);
+        Density.Of(reference, Kernel.Gaussian, result.Band.FirstBandwidth, limits).Values(x, before);
+        string name = StudyComparison.Name(study);
+        (double, double, bool)[] different =
+        [
+            .. result.Band.Higher.Select(s => (s.Lower, s.Upper, true)),
+            .. result.Band.Lesser.Select(s => (s.Lower, s.Upper, false)),
+        ];
+        return new FigureModel
+        {
+            X = x,
+            Y = now,
+            CurveWords = "now",
+            Second = before,
+            SecondWords = name,
+            Different = different,
+            Limits = [.. study.Limits.Select(l => (l.Limit, StudyNumbers.WithUnit(StudyNumbers.AsGiven(l.Limit), study.Unit)))],
+            Name = study.Name,
+            Unit = study.Unit,
+            Alternative = Guard.Text($"Two curves, the studied values ({StudyNumbers.Count(StudySteps.Observations(study.Sample))}) as a line and {name} ({StudyNumbers.Count(StudySteps.Observations(study.Reference!))}) dashed{(different.Length == 0 ? "; nowhere do they differ beyond chance." : "; marks under the axis show where they differ beyond chance.")}"),
+        };
+    }
+
+    /// <summary>Stretches where the estimated bias is larger than half the width of the band.</summary>
+    public static IReadOnlyList<Interval> Biased(DensityStudy study)
+    {
+        var stretches = new List<Interval>();
         if (study.Band is not { } band || study.Uncertainty is not { } trust)
         {
             return stretches;
@@ -57,7 +99,12 @@ internal static class StudyFigure
             }
             else if (!beyond && start >= 0)
             {
-                stretches.Add((x[start], x[i - 1]));
+                // Shorter than half a bandwidth it is too short to see or to say.
+                if (x[i - 1] - x[start] >= study.Bandwidth / 2)
+                {
+                    stretches.Add(new Interval(x[start], x[i - 1]));
+                }
+
                 start = -1;
             }
         }
@@ -65,17 +112,22 @@ internal static class StudyFigure
         return stretches;
     }
 
+    private static IEnumerable<Peak> Seen(DensityStudy study) => StudyPeaks.Named(study).Where(p => study.Picture.Contains(p.Location));
+
+    private static string Around(DensityStudy study, double place) => StudyNumbers.WithUnit(StudyPeaks.Around(study, place), study.Unit);
+
     private static string Limit(DensityStudy study, LimitAnswer answer) =>
         Guard.Text($"above {StudyNumbers.WithUnit(StudyNumbers.AsGiven(answer.Limit), study.Unit)}: {StudyNumbers.Percent(answer.Beyond.Estimate, answer.Beyond.Interval.Length / 2)}");
 
     private static string Alternative(DensityStudy study)
     {
-        IReadOnlyList<Peak> peaks = [.. StudyPeaks.Named(study).Where(p => study.Picture.Contains(p.Location))];
-        string shape = peaks.Count == 0 ? "steps" : peaks.Count == 1
-            ? Guard.Text($"one hump, highest near {StudyPeaks.Place(study, peaks[0].Location)}")
-            : Guard.Text($"{StudyNumbers.CountWord(peaks.Count)} humps, near {string.Join(" and ", peaks.Take(4).Select(p => StudyPeaks.Place(study, p.Location)))}{(peaks.Count > 4 ? " and further on" : "")}");
-        string limits = string.Concat(study.Limits.Select(l => Guard.Text($"; {StudyNumbers.Percent(l.Beyond.Estimate, l.Beyond.Interval.Length / 2)} of the values lie beyond {StudyNumbers.WithUnit(StudyNumbers.AsGiven(l.Limit), study.Unit)}")));
-        return Guard.Text($"A curve with {shape}, between {StudyPeaks.Place(study, study.Picture.Lower)} and {StudyPeaks.Place(study, study.Picture.Upper)}{limits}.");
+        Peak[] peaks = [.. Seen(study)];
+        string[] places = [.. peaks.Take(4).Select(p => StudyPeaks.Around(study, p.Location))];
+        string shape = peaks.Length == 0 ? "steps" : peaks.Length == 1
+            ? Guard.Text($"one hump, highest near {Around(study, peaks[0].Location)}")
+            : Guard.Text($"{StudyNumbers.CountWord(peaks.Length)} humps, near {StudyNumbers.WithUnit(StudyNumbers.Listed(places), study.Unit)}{(peaks.Length > 4 ? " and further on" : "")}");
+        string limits = string.Concat(study.Limits.Take(4).Select(l => Guard.Text($"; {StudyNumbers.Percent(l.Beyond.Estimate, l.Beyond.Interval.Length / 2)} of the values lie above {StudyNumbers.WithUnit(StudyNumbers.AsGiven(l.Limit), study.Unit)}")));
+        return Guard.Text($"A curve with {shape}, drawn from {StudyPeaks.Around(study, study.Picture.Lower)} to {Around(study, study.Picture.Upper)}{limits}.");
     }
 
     private static List<(double X, double Weight)> Strip(Sample sample, Interval picture)

@@ -20,11 +20,32 @@ internal static class StudyMethod
         string limits = study.Options.Support is { } support && study.Options.Boundary != BoundaryCorrection.None
             ? Guard.Text($", {Correction(study.Options.Boundary)} on {Range(support)}")
             : "";
-        return Guard.Text($"{study.Options.Kernel.Name} kernel estimate of n = {StudyNumbers.Count(study.Sample.Count)} values{weights}{missing}{atoms}{limits}; bandwidth h = {StudyNumbers.WithUnit(StudyNumbers.Significant(study.Bandwidth, 3), study.Unit)} ({Rule(study.Bandwidth)}){Band(study)}; shares: exact binomial intervals, quantiles: order-statistic intervals, level {StudyNumbers.AsGiven(Math.Round(100 * study.Options.Level, 10))} %; Smoothing {Version}.");
+        return Guard.Text($"{study.Options.Kernel.Name} kernel estimate of n = {StudyNumbers.Count(study.Sample.Count)} values{weights}{missing}{atoms}{limits}; bandwidth h = {StudyNumbers.WithUnit(StudyNumbers.Significant(study.Bandwidth, 3), study.Unit)} ({Rule(study.Bandwidth)}){Band(study)}{Shares(study)}{Groups(study)}{Comparison(study)}; Smoothing {Version}.");
     }
 
     private static string Band(DensityStudy study) => study.Band is { } band
         ? Guard.Text($"; {StudyNumbers.AsGiven(Math.Round(100 * band.Level, 10))} % simultaneous band (debiased kernel, gamma limits, c = {band.CriticalValue:F2})")
+        : "";
+
+    private static string Shares(DensityStudy study)
+    {
+        if (study.Limits.Count + study.Quantiles.Count == 0)
+        {
+            return "";
+        }
+
+        string shares = study.Limits.Count > 0 ? "shares: " + study.Limits[0].Beyond.Method : "";
+        string quantiles = study.Quantiles.Count > 0 ? "quantiles: " + char.ToLowerInvariant(study.Quantiles[0].Method[0]) + study.Quantiles[0].Method[1..] : "";
+        string both = string.Join(", ", new[] { shares, quantiles }.Where(part => part.Length > 0));
+        return Guard.Text($"; {both}, level {StudyNumbers.AsGiven(Math.Round(100 * study.Options.Level, 10))} %");
+    }
+
+    private static string Groups(DensityStudy study) => study.Groups is { Tests.Count: > 0 } evidence
+        ? Guard.Text($"; groups: {string.Join(", ", evidence.Tests.Select(t => t.Method.Split(',')[0]).Distinct())}{(double.IsNaN(evidence.Dip) ? "" : ", dip")}, {new Inference.GroupOptions().Resamples} resamples, seed {study.Options.Seed}")
+        : "";
+
+    private static string Comparison(DensityStudy study) => study.Comparison is { } result
+        ? Guard.Text($"; comparison: {result.Permutations} permutations, seed {study.Options.Seed}")
         : "";
 
     /// <summary>How the bandwidth came about, in words.</summary>
@@ -35,19 +56,36 @@ internal static class StudyMethod
             return "given by the analyst";
         }
 
-        string name = Name(choice.Rule);
+        string name = choice.Rule == BandwidthRule.Automatic ? Automatic(choice) : Name(choice.Rule);
         return choice.Status switch
         {
-            BandwidthStatus.Replaced when choice.ReplacedBy is { } other => Guard.Text($"{name} found nothing; {Name(other)} in its place"),
+            BandwidthStatus.Replaced when choice is { Rule: not BandwidthRule.Automatic, ReplacedBy: { } other } => Guard.Text($"{name} found nothing; {Name(other)} in its place"),
             BandwidthStatus.RoundingFloor => Guard.Text($"{name}, raised because of the rounding of the data"),
             BandwidthStatus.EndOfSearch => Guard.Text($"{name}, at the end of its search"),
             _ => name,
         };
     }
 
+    // Which of its two rules the automatic one took, and why.
+    private static string Automatic(BandwidthChoice choice)
+    {
+        if (choice.ReplacedBy is not { } taken)
+        {
+            return "automatic";
+        }
+
+        if (choice.Status == BandwidthStatus.Replaced)
+        {
+            return "automatic: " + (taken == BandwidthRule.NormalReference ? "normal reference, as nothing else was found" : Name(taken) + " alone, as the other rule found nothing");
+        }
+
+        string[] others = [.. choice.Candidates.Keys.Where(k => k != taken).Select(Name)];
+        return "automatic: " + Name(taken) + (others.Length > 0 ? ", the smaller of it and " + others[0] : "");
+    }
+
     private static string Name(BandwidthRule rule) => rule switch
     {
-        BandwidthRule.Automatic => "automatic: the smaller of diffusion fixed point and Sheather–Jones",
+        BandwidthRule.Automatic => "automatic",
         BandwidthRule.NormalReference => "normal reference",
         BandwidthRule.Oversmoothed => "oversmoothed",
         BandwidthRule.SheatherJones => "Sheather–Jones",

@@ -50,15 +50,27 @@ public sealed record StudyOptions
     /// <summary>Whether the values stand in the order of time: dependence between neighbours is then looked for and allowed for. Default false.</summary>
     public bool TimeOrdered { get; init; }
 
+    /// <summary>An earlier period, another site: values that the studied ones are compared with, in the same unit; null (the default) for no comparison.</summary>
+    public Sample? Reference { get; init; }
+
+    /// <summary>The same as plain values, read as <see cref="Missing"/> says; empty (the default) for no comparison. Give this or <see cref="Reference"/>, not both.</summary>
+    public ReadOnlyMemory<double> ReferenceValues { get; init; }
+
+    /// <summary>What the reference is called in the report, such as "last quarter". Default "the reference".</summary>
+    public string ReferenceName { get; init; } = "";
+
     /// <summary>Seed of every random step (groups, comparison): the same seed gives the same report. Default 1.</summary>
     public ulong Seed { get; init; } = 1;
 
     /// <summary>Points at which the curve and its band are tabulated, 51 to 10,001. Default 401.</summary>
     public int Points { get; init; } = 401;
 
-    /// <summary>Told the share of the work done, from 0 to 1; null (the default) for nobody.</summary>
+    /// <summary>
+    /// Told the share of the work done, never falling: to 0.3 while the study is made, to 1 as its costly parts (groups, comparison) are first asked for, by a report
+    /// or by name. Null (the default) for nobody.
+    /// </summary>
     public IProgress<double>? Progress { get; init; }
 
-    /// <summary>Stops long steps early with <see cref="OperationCanceledException"/>.</summary>
+    /// <summary>Stops long steps early with <see cref="OperationCanceledException"/>, also those that run when a part is first asked for.</summary>
     public CancellationToken Cancellation { get; init; }
 }

@@ -13,6 +13,16 @@ internal static class StudySteps
     public static void Check(StudyOptions options)
     {
         Guard.Given(options.Kernel, nameof(options.Kernel));
+        Guard.Given(options.Name, nameof(options.Name));
+        Guard.Given(options.Unit, nameof(options.Unit));
+        Guard.Given(options.ReferenceName, nameof(options.ReferenceName));
+        Guard.Given(options.Limits, nameof(options.Limits));
+        Guard.Given(options.Probabilities, nameof(options.Probabilities));
+        if (options.Reference is not null && !options.ReferenceValues.IsEmpty)
+        {
+            throw new ArgumentException("Reference and ReferenceValues are both given: the values can be compared with one of them only, so leave one out.", nameof(options));
+        }
+
         Guard.Level(options.Level, nameof(options.Level));
         Guard.InRange(options.Points, 51, 10_001, nameof(options.Points));
         if (options.Bandwidth is double h)
@@ -31,6 +41,16 @@ internal static class StudySteps
         }
     }
 
+    /// <summary>How a column is read.</summary>
+    public static SampleOptions Columns(StudyOptions options) =>
+        new() { Weights = options.Weights, WeightMeaning = options.WeightMeaning, Missing = options.Missing, Name = options.Name, Unit = options.Unit };
+
+    /// <summary>How many observations there are: the sum of the weights where these are counts.</summary>
+    public static double Observations(Sample sample) => sample.IsWeighted && sample.WeightMeaning == WeightMeaning.Counts ? sample.TotalWeight : sample.Count;
+
+    /// <summary>Whether powers of the bandwidth up to the fifth stay inside the range of a double.</summary>
+    public static bool IsModerate(double bandwidth) => bandwidth is > 1e-60 and < 1e60;
+
     public static BandwidthChoice Choose(Sample sample, StudyOptions options)
     {
         BandwidthChoice choice = options.Bandwidth is double given
@@ -45,7 +65,7 @@ internal static class StudySteps
 
     /// <summary>Statements about the error; null where too few values carry the curve.</summary>
     public static Uncertainty? Trust(Density density, BandwidthChoice choice, StudyOptions options) =>
-        density is { Kernel.Order: 2, Bandwidth: > 1e-60 and < 1e60, Sample: { Count: >= 3 } sample } && sample.Minimum < sample.Maximum
+        IsModerate(density.Bandwidth) && density is { Kernel.Order: 2, Sample: { Count: >= 3 } sample } && sample.Minimum < sample.Maximum
             ? Uncertainty.Of(density, new UncertaintyOptions { Level = options.Level, Choice = choice, Dependence = Serial(options) })
             : null;
 

@@ -7,6 +7,7 @@ namespace Smoothing;
 internal static class TextReport
 {
     private const int Width = 80;
+    private const int Gap = 3;
 
     public static string Write(ReportModel report)
     {
@@ -19,13 +20,7 @@ internal static class TextReport
         text.Append(new string('=', Math.Min(Width, Length(report.Title)))).Append("\n\n");
         if (report.Figure is not null)
         {
-            foreach (string line in TextFigure.Draw(report.Figure))
-            {
-                text.Append(line).Append('\n');
-            }
-
-            text.Append('\n');
-            Paragraph(text, report.Figure.Alternative, "");
+            Picture(text, report.Figure);
         }
 
         foreach (ReportSection section in report.Sections)
@@ -35,7 +30,14 @@ internal static class TextReport
             {
                 if (block is ReportBlock.Table table)
                 {
+                    text.Append(ReferenceEquals(block, section.Blocks[0]) || text[^2] == '\n' ? "" : "\n");
                     Table(text, table);
+                    text.Append(ReferenceEquals(block, section.Blocks[^1]) ? "" : "\n");
+                }
+                else if (block is ReportBlock.Picture picture)
+                {
+                    Picture(text, picture.Figure);
+                    text.Append('\n');
                 }
                 else if (block is ReportBlock.Paragraph paragraph)
                 {
@@ -47,6 +49,17 @@ internal static class TextReport
         text.Append("\nMethod\n------\n");
         Paragraph(text, report.Method, "");
         return text.ToString();
+    }
+
+    private static void Picture(StringBuilder text, FigureModel figure)
+    {
+        foreach (string line in TextFigure.Draw(figure))
+        {
+            text.Append(line).Append('\n');
+        }
+
+        text.Append('\n');
+        Paragraph(text, figure.Alternative, "");
     }
 
     private static void Paragraph(StringBuilder text, string paragraph, string bullet)
@@ -62,39 +75,48 @@ internal static class TextReport
 
     private static void Table(StringBuilder text, ReportBlock.Table table)
     {
-        int columns = table.Headings.Count;
-        int[] widths = Enumerable.Range(0, columns).Select(c => Math.Max(Length(table.Headings[c]), table.Rows.Max(r => Length(r[c])))).ToArray();
-
-        // The last column may be long words: it wraps under itself.
-        int before = widths.Take(columns - 1).Sum() + (3 * (columns - 1)) + 2;
-        int last = Math.Max(16, Width - before);
+        int[] widths = Widths(table);
         foreach (IReadOnlyList<string> row in table.Rows.Prepend(table.Headings))
         {
-            var line = new StringBuilder("  ");
-            for (int c = 0; c < columns - 1; c++)
+            List<string>[] cells = [.. row.Select((cell, c) => Wrap(cell, widths[c]))];
+            for (int line = 0; line < cells.Max(c => c.Count); line++)
             {
-                int pad = widths[c] - Length(row[c]);
-                line.Append(row[c]).Append(' ', pad + 3);
-            }
+                var written = new StringBuilder("  ");
+                for (int c = 0; c < cells.Length; c++)
+                {
+                    string piece = line < cells[c].Count ? cells[c][line] : "";
+                    written.Append(piece).Append(' ', widths[c] - Length(piece) + Gap);
+                }
 
-            bool first = true;
-            foreach (string piece in Wrap(row[columns - 1], last))
-            {
-                text.Append((first ? line.ToString() + piece : new string(' ', before) + piece).TrimEnd()).Append('\n');
-                first = false;
+                text.Append(written.ToString().TrimEnd()).Append('\n');
             }
 
             if (ReferenceEquals(row, table.Headings))
             {
-                text.Append("  ").Append(new string('-', Math.Min(Width - 2, before - 2 + Math.Min(last, widths[columns - 1])))).Append('\n');
+                text.Append("  ").Append('-', widths.Sum() + (Gap * (widths.Length - 1))).Append('\n');
             }
         }
+    }
+
+    // As wide as the longest cell; where that is too much for a line, the widest columns give way and their cells wrap.
+    private static int[] Widths(ReportBlock.Table table)
+    {
+        int[] widths = [.. Enumerable.Range(0, table.Headings.Count).Select(c => table.Rows.Prepend(table.Headings).Max(r => Length(r[c])))];
+        int room = Width - 2 - (Gap * (widths.Length - 1));
+        while (widths.Sum() > room)
+        {
+            widths[Array.IndexOf(widths, widths.Max())]--;
+        }
+
+        return widths;
     }
 
     private static int Length(string text) => new StringInfo(text).LengthInTextElements;
 
     private static List<string> Wrap(string text, int width)
     {
+        // "13 %" and "p = 0.02" stay on one line.
+        text = text.Replace(" %", "\u00A0%", StringComparison.Ordinal).Replace("p = ", "p\u00A0=\u00A0", StringComparison.Ordinal);
         var lines = new List<string>();
         var line = new StringBuilder();
         int used = 0;
@@ -133,6 +155,6 @@ internal static class TextReport
             lines.Add(line.ToString());
         }
 
-        return lines;
+        return [.. lines.Select(l => l.Replace('\u00A0', ' '))];
     }
 }

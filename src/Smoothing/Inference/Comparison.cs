@@ -72,13 +72,13 @@ public static class Comparison
         {
             if (sample.LagOneCorrelation > Math.Max(0.3, sample.LagOneLimit))
             {
-                notes.Add(Guard.Text($"Neighbouring values of {Named(sample, ReferenceEquals(sample, a))} are correlated (lag-1 autocorrelation {sample.LagOneCorrelation:F2}): if the order is that of time, the test sees differences too easily."));
+                notes.Add(Guard.Text($"Neighbouring values of {Named(sample, ReferenceEquals(sample, a), options)} are correlated (lag-1 autocorrelation {sample.LagOneCorrelation:F2}): if the order is that of time, the test sees differences too easily."));
             }
         }
 
         QuantileShift[] shifts = [.. options.Probabilities.Select(q => Shift(a, b, q, options.Level))];
         string unit = a.Unit.Length > 0 ? a.Unit : b.Unit;
-        return new ComparisonResult(p, options.Permutations, h, band, commonBand, Array.AsReadOnly(shifts), Named(a, first: true), Named(b, first: false), unit, notes.AsReadOnly());
+        return new ComparisonResult(p, options.Permutations, h, band, commonBand, Array.AsReadOnly(shifts), Named(a, first: true, options), Named(b, first: false, options), unit, notes.AsReadOnly());
     }
 
     /// <summary>Compares every pair among several samples, p-values adjusted after Holm (1979).</summary>
@@ -132,6 +132,8 @@ public static class Comparison
         Guard.InRange(options.Permutations, 99, 10_000_000, nameof(ComparisonOptions.Permutations));
         Guard.AtLeast(options.Points, 2, nameof(ComparisonOptions.Points));
         Guard.Given(options.Probabilities, nameof(ComparisonOptions.Probabilities));
+        Guard.Given(options.FirstName, nameof(ComparisonOptions.FirstName));
+        Guard.Given(options.SecondName, nameof(ComparisonOptions.SecondName));
         for (int i = 0; i < options.Probabilities.Count; i++)
         {
             Guard.Level(options.Probabilities[i], Guard.Text($"Probabilities[{i}]"));
@@ -200,5 +202,9 @@ public static class Comparison
         return new QuantileShift(probability, first.Estimate, second.Estimate, new Interval(shift - below, shift + above));
     }
 
-    private static string Named(Sample sample, bool first) => sample.Name.Length > 0 ? sample.Name : first ? "the first sample" : "the second sample";
+    private static string Named(Sample sample, bool first, ComparisonOptions options)
+    {
+        string given = first ? options.FirstName : options.SecondName;
+        return given.Length > 0 ? given : sample.Name.Length > 0 ? sample.Name : first ? "the first sample" : "the second sample";
+    }
 }

@@ -23,6 +23,12 @@ public sealed record ComparisonOptions
     /// <summary>Known limits of both ranges; null for the whole line.</summary>
     public Interval? Support { get; init; }
 
+    /// <summary>What the first sample is called in sentences; empty (the default) for its own name.</summary>
+    public string FirstName { get; init; } = "";
+
+    /// <summary>What the second sample is called in sentences; empty (the default) for its own name.</summary>
+    public string SecondName { get; init; } = "";
+
     /// <summary>Stops long work early with <see cref="OperationCanceledException"/>.</summary>
     public CancellationToken Cancellation { get; init; }
 

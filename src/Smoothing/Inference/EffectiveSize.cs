@@ -15,6 +15,9 @@ internal static class EffectiveSize
     // Below five independent values every limit is close to "anything is possible": said, not hidden.
     private const double FewValues = 5;
 
+    /// <summary>How the note about dependent values begins.</summary>
+    public const string DependenceNote = "The values depend on each other in time";
+
     /// <summary>The effective size for the share of the values in a set, beside that share.</summary>
     public static (double Size, double Share, double Weight) Of(Sample sample, Func<double, bool> inside, SerialDependence dependence, List<string> notes)
     {
@@ -82,7 +85,7 @@ internal static class EffectiveSize
         }
 
         double inflation = batches.Inflation(indicator);
-        notes.Add(Guard.Text($"The values depend on each other in time (lag-1 autocorrelation {batches.LagOne:F2}): {count:G6} of them count as {n / inflation:G4} here (batch means of {Math.Ceiling(batches.BlockLength):F0} values)."));
+        notes.Add(Guard.Text($"{DependenceNote} (lag-1 autocorrelation {batches.LagOne:F2}): {count:G6} of them count as {n / inflation:G4} here (batch means of {Math.Ceiling(batches.BlockLength):F0} values)."));
         return n / inflation;
     }
 

@@ -5,7 +5,7 @@ namespace Smoothing.Inference;
 /// <summary>What the data say about the number of groups: a lower bound for the number of peaks, the tests behind it, and the curve's peaks.</summary>
 public sealed class GroupEvidence
 {
-    internal GroupEvidence(IReadOnlyList<GroupTest> tests, double dip, double dipPValue, double significance, double level, double bandwidth, IReadOnlyList<GroupPeak> peaks, double effectiveCount, IReadOnlyList<string> warnings)
+    internal GroupEvidence(IReadOnlyList<GroupTest> tests, double dip, double dipPValue, double significance, double level, double bandwidth, IReadOnlyList<GroupPeak> peaks, double effectiveCount, IReadOnlyList<(GroupWarning Kind, string Text)> findings)
     {
         Tests = tests;
         Dip = dip;
@@ -15,7 +15,8 @@ public sealed class GroupEvidence
         Bandwidth = bandwidth;
         Peaks = peaks;
         EffectiveCount = effectiveCount;
-        Warnings = warnings;
+        Findings = findings;
+        Warnings = Array.AsReadOnly([.. findings.Select(f => f.Text)]);
         AtLeast = 1;
         foreach (GroupTest test in tests)
         {
@@ -60,6 +61,9 @@ public sealed class GroupEvidence
 
     /// <summary>Where the tests are known to be too quick to see groups, and what else a reader must know; usually empty.</summary>
     public IReadOnlyList<string> Warnings { get; }
+
+    /// <summary>The warnings with what each is about.</summary>
+    internal IReadOnlyList<(GroupWarning Kind, string Text)> Findings { get; }
 
     /// <summary>The finding in words.</summary>
     public string Sentence

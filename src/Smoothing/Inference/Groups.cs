@@ -44,7 +44,7 @@ public static class Groups
             Guard.Positive(given, "choose one with BandwidthRules, or leave it out", nameof(GroupOptions.Bandwidth));
         }
 
-        var warnings = new List<string>();
+        var warnings = new List<(GroupWarning Kind, string Text)>();
         var range = new Interval(sample.Quantile((1 - Central) / 2), sample.Quantile((1 + Central) / 2));
         if (Distinct(sample) < FewestDistinct || !(range.Length > 0))
         {
@@ -64,10 +64,10 @@ public static class Groups
         }
 
         Warn(sample, density, range, relative, warnings);
-        return new GroupEvidence(tests, dip, dipPValue, options.Significance, options.Level, h, PeakIntervals.Of(density, options.Level, range), sample.EffectiveCount, warnings.AsReadOnly());
+        return new GroupEvidence(tests, dip, dipPValue, options.Significance, options.Level, h, PeakIntervals.Of(density, options.Level, range), sample.EffectiveCount, warnings);
     }
 
-    private static List<GroupTest> Ladder(Sample sample, Interval range, ulong seed, GroupOptions options, List<string> warnings)
+    private static List<GroupTest> Ladder(Sample sample, Interval range, ulong seed, GroupOptions options, List<(GroupWarning Kind, string Text)> warnings)
     {
         (double[] x, double[] weights) = ModeTests.Condense(sample, range);
         var tests = new List<GroupTest>();
@@ -82,7 +82,7 @@ public static class Groups
             {
                 if (critical > 0)
                 {
-                    warnings.Add(Guard.Text($"More than {k - 1} peaks were not tested: rounding to multiples of {rounding:G4} limits the resolution."));
+                    warnings.Add((GroupWarning.RoundingStops, Guard.Text($"More than {k - 1} peaks were not tested: rounding to multiples of {rounding:G4} limits the resolution.")));
                 }
 
                 break;
@@ -120,7 +120,7 @@ public static class Groups
         return tests;
     }
 
-    private static void Warn(Sample sample, Density density, Interval range, bool relative, List<string> warnings)
+    private static void Warn(Sample sample, Density density, Interval range, bool relative, List<(GroupWarning Kind, string Text)> warnings)
     {
         double highest = 0;
         for (int i = 0; i <= 100; i++)
@@ -130,27 +130,27 @@ public static class Groups
 
         if (highest < FlatBelow * Central / range.Length)
         {
-            warnings.Add("The distribution is nearly flat: on such shapes the tests see more than one peak too often, in a quarter of samples or more. Trust the dip.");
+            warnings.Add((GroupWarning.Flat, "The distribution is nearly flat: on such shapes the tests see more than one peak too often, in a quarter of samples or more. Trust the dip."));
         }
 
         foreach (LimitFinding finding in LimitEvidence.Suspected(sample))
         {
-            warnings.Add(Guard.Text($"The values seem to end abruptly at {finding.Limit:G5}: near such an end the tests see peaks too easily."));
+            warnings.Add((GroupWarning.End, Guard.Text($"The values seem to end abruptly at {finding.Limit:G5}: near such an end the tests see peaks too easily.")));
         }
 
         if (sample.EffectiveCount < 50)
         {
-            warnings.Add(Guard.Text($"Only {sample.EffectiveCount:G4} values: two groups are found about as often as missed even when they are plainly apart."));
+            warnings.Add((GroupWarning.Few, Guard.Text($"Only {sample.EffectiveCount:G4} values: two groups are found about as often as missed even when they are plainly apart.")));
         }
 
         if (relative)
         {
-            warnings.Add("With weights the tests draw samples of the effective size; their level was not tested there, and the dip is left out.");
+            warnings.Add((GroupWarning.Weights, "With weights the tests draw samples of the effective size; their level was not tested there, and the dip is left out."));
         }
 
         if (Math.Abs(sample.LagOneCorrelation) > 2 / Math.Sqrt(sample.Count) && sample.LagOneCorrelation > 0.3)
         {
-            warnings.Add(Guard.Text($"Neighbouring values are correlated (lag-1 autocorrelation {sample.LagOneCorrelation:F2}): a slow drift can look like groups."));
+            warnings.Add((GroupWarning.Dependence, Guard.Text($"Neighbouring values are correlated (lag-1 autocorrelation {sample.LagOneCorrelation:F2}): a slow drift can look like groups.")));
         }
     }
 

@@ -20,7 +20,7 @@ public class DensityStudyTests
         Assert.Equal(2, study.Peaks!.Peaks.Count(p => p.Prominence > 0.02 * study.Peaks.Highest.Height));
         Assert.Equal(s_eruptions.Count(v => v > 4.5) / 272.0, study.Limits[0].Beyond.Estimate, 14);
         string text = study.ToText();
-        Assert.Contains("two peaks", text, StringComparison.Ordinal);
+        Assert.Contains("at least two groups", text.Replace('\n', ' '), StringComparison.Ordinal);
         Assert.Contains("above 4.5 min", text, StringComparison.Ordinal);
         Assert.DoesNotContain("NaN", text, StringComparison.Ordinal);
         Assert.All(text.Split('\n'), line => Assert.True(new StringInfo(line).LengthInTextElements <= 80, line));
@@ -67,7 +67,7 @@ public class DensityStudyTests
     {
         DensityStudy study = DensityStudy.Of([3.0], new StudyOptions { Bandwidth = 1, Limits = [2] });
         Near.Relative(1 / Math.Sqrt(2 * Math.PI), study.Density.Value(3), 1e-14);
-        Assert.Contains("Only 1 values", study.Cautions.Single(c => c.Kind == CautionKind.FewValues).Text, StringComparison.Ordinal);
+        Assert.Contains("Only one value", study.Cautions.Single(c => c.Kind == CautionKind.FewValues).Text, StringComparison.Ordinal);
     }
 
     // Dry days: 838 of 1,461 (57.4 %) in the open data set.
@@ -110,7 +110,7 @@ public class DensityStudyTests
         var document = new HtmlParser(new HtmlParserOptions { IsStrictMode = true }).ParseDocument(html);
         Assert.Empty(document.QuerySelectorAll("script"));
         Assert.Empty(document.QuerySelectorAll("b"));
-        Assert.Single(document.QuerySelectorAll("svg"));
+        Assert.Equal(2, document.QuerySelectorAll("svg").Length);
         Assert.NotNull(document.QuerySelector("svg desc"));
         Assert.DoesNotContain('\u202E', html);
         Assert.DoesNotContain("http://", html.Replace("http://www.w3.org/2000/svg", "", StringComparison.Ordinal), StringComparison.Ordinal);
