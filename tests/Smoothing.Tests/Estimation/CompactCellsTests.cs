@@ -7,6 +7,7 @@ using Smoothing.Tests.Support;
 namespace Smoothing.Tests.Estimation;
 
 // Unsorted values, many points: against sums in 31-digit arithmetic.
+[Trait("Category", "Widths")]
 public class CompactCellsTests
 {
     public static TheoryData<string> Samples => [.. HardSamples.Names];

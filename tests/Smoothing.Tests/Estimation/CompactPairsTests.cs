@@ -6,6 +6,7 @@ using Smoothing.Tests.Support;
 namespace Smoothing.Tests.Estimation;
 
 // Leave-one-out values and pair sums against 31-digit arithmetic over all pairs.
+[Trait("Category", "Widths")]
 public class CompactPairsTests
 {
     public static TheoryData<string> Samples => [.. HardSamples.Names];

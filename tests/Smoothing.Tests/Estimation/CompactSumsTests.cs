@@ -6,6 +6,7 @@ using Smoothing.Tests.Support;
 namespace Smoothing.Tests.Estimation;
 
 // Against sums in 31-digit arithmetic of the kernels' usual formulas; windows decided on exact differences.
+[Trait("Category", "Widths")]
 public class CompactSumsTests
 {
     public static TheoryData<string> Samples => [.. HardSamples.Names];

@@ -6,6 +6,7 @@ using Smoothing.Tests.Support;
 namespace Smoothing.Tests.Estimation;
 
 // Against e^(−u²/2) summed in 31-digit arithmetic.
+[Trait("Category", "Widths")]
 public class GaussianDirectTests
 {
     private const double Root = 2.5066282746310002; // √(2π)

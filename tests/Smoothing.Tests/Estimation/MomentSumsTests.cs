@@ -6,6 +6,7 @@ using Smoothing.Tests.Support;
 namespace Smoothing.Tests.Estimation;
 
 /// <summary>Gaussian sums from cell moments against sums in 31-digit arithmetic: the accuracy promised, on data that usually cost digits.</summary>
+[Trait("Category", "Widths")]
 public class MomentSumsTests
 {
     private const int Count = 3000;

@@ -4,6 +4,7 @@ using Smoothing.Tests.Support;
 
 namespace Smoothing.Tests.Numerics;
 
+[Trait("Category", "Widths")]
 public class VectorExpTests
 {
     // Against the Taylor series in 31-digit arithmetic.

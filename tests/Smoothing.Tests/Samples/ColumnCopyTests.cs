@@ -3,6 +3,7 @@ using Smoothing.Tests.Support;
 
 namespace Smoothing.Tests.Samples;
 
+[Trait("Category", "Widths")]
 public class ColumnCopyTests
 {
     [Fact]
