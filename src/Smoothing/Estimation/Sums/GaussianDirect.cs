@@ -124,7 +124,7 @@ internal static unsafe class GaussianDirect
         new Span<double>(ones, 4).Fill(1);
         int whole = count / 4 * 4; // the last one to three values wait, filled up with weight 0, in a place of their own
         int extent = whole < count ? 4 : 0;
-        int first = whole > 0 ? 0 : 1;
+        int begin = whole > 0 ? 0 : 1;
         int stride = weights == null ? 0 : 4;
         if (extent > 0)
         {
@@ -136,7 +136,7 @@ internal static unsafe class GaussianDirect
             Vector256<double> s0 = default, s1 = default, s2 = default, s3 = default, s4 = default, s5 = default, s6 = default, s7 = default;
             Vector256<double> s8 = default, s9 = default, s10 = default, s11 = default, s12 = default, s13 = default, s14 = default, s15 = default;
             Vector256<double> centre = Vector256.Create(CentreOf(x, j, step));
-            for (int part = first; part < 2; part++)
+            for (int part = begin; part < 2; part++)
             {
                 double* source = part == 0 ? values : rest;
                 double* stop = part == 0 ? values + whole : rest + extent;
@@ -144,41 +144,35 @@ internal static unsafe class GaussianDirect
                 for (; source < stop; source += 4, mass += stride)
                 {
                     Vector256<double> u = (centre - Vector256.Load(source)) * inverse;
-                    Vector256<double> exponent = Vector256.Min(Vector256.Max(u * minusStep, -most), most);
+                    Vector256<double> exponent = Vector256.MinNative(Vector256.MaxNative(u * minusStep, -most), most);
                     Vector256<double> g = VectorExp.Of(u * u * minusHalf) * Vector256.Load(mass);
                     Vector256<double> up = VectorExp.Of(exponent);
                     Vector256<double> down = Vector256<double>.One / up;
+
+                    // Powers by squares: chains of seven products would keep the next value waiting.
+                    Vector256<double> square = up * up, first = g * up;
+                    Vector256<double> fourth = square * square, second = g * square, third = first * square;
                     s8 += g;
-                    Vector256<double> f = g * up;
-                    s9 += f;
-                    f *= up;
-                    s10 += f;
-                    f *= up;
-                    s11 += f;
-                    f *= up;
-                    s12 += f;
-                    f *= up;
-                    s13 += f;
-                    f *= up;
-                    s14 += f;
-                    f *= up;
-                    s15 += f;
-                    f = g * down;
-                    s7 += f;
-                    f *= down;
-                    s6 += f;
-                    f *= down;
-                    s5 += f;
-                    f *= down;
-                    s4 += f;
-                    f *= down;
-                    s3 += f;
-                    f *= down;
-                    s2 += f;
-                    f *= down;
-                    s1 += f;
-                    f *= down;
-                    s0 += f;
+                    s9 += first;
+                    s10 += second;
+                    s11 += third;
+                    s12 += g * fourth;
+                    s13 += first * fourth;
+                    s14 += second * fourth;
+                    s15 += third * fourth;
+                    square = down * down;
+                    first = g * down;
+                    fourth = square * square;
+                    second = g * square;
+                    third = first * square;
+                    s7 += first;
+                    s6 += second;
+                    s5 += third;
+                    s4 += g * fourth;
+                    s3 += first * fourth;
+                    s2 += second * fourth;
+                    s1 += third * fourth;
+                    s0 += g * (fourth * fourth);
                 }
             }
 

@@ -1,7 +1,7 @@
 using System.Runtime.CompilerServices;
 using System.Runtime.InteropServices;
 
-namespace Smoothing.Estimation;
+namespace Smoothing.Numerics;
 
 /// <summary>A pinned array of doubles that starts on a cache line and is kept for the next call when it is long enough.</summary>
 internal sealed unsafe class AlignedRoom
