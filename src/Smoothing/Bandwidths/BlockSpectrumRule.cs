@@ -72,7 +72,8 @@ internal static class BlockSpectrumRule
         };
     }
 
-    private static double Transform(int order, double u)
+    /// <summary>The transform of the Gaussian-based kernel of an order at u.</summary>
+    public static double Transform(int order, double u)
     {
         double z = 0.5 * u * u, term = 1, sum = 1;
         for (int i = 1; i < order / 2; i++)

@@ -5,8 +5,8 @@ namespace Smoothing.Bandwidths;
 /// <summary>Least-squares cross-validation.</summary>
 /// <remarks>
 /// Method: minimises LSCV(h) = ∫(f̂^(r))² − 2 mean over pairs of two observations of the r-th estimate, an unbiased estimate of the integrated
-/// error less a constant. For Gaussian-based kernels through the spectrum, minima as zeros of the exact derivative (order 2); for
-/// other kernels exact sums over all pairs up to 2,000 distinct values, beyond that the Gaussian's minimum by canonical bandwidths. Source: Rudemo (1982), Bowman
+/// error less a constant. For the Gaussian through the spectrum, minima as zeros of the exact derivative; for other kernels see
+/// <see cref="LeastSquaresKernels"/>. Source: Rudemo (1982), Bowman
 /// (1984); the largest local minimum: Hall &amp; Marron (1991). Dominant error: noise, relative spread of h falling only like n^(−1/10); ties draw it to 0.
 /// </remarks>
 internal static class LeastSquaresRule
@@ -21,7 +21,10 @@ internal static class LeastSquaresRule
     {
         int r = input.Options.Derivative;
         double root2 = Math.Sqrt(2);
-        BandwidthChecks.SecondOrder(kernel, BandwidthRule.LeastSquaresCrossValidation);
+        if (LeastSquaresKernels.Find(input, kernel) is { } exact)
+        {
+            return exact;
+        }
 
         // d/dh of R(r, h) − 2 Q(r, h/√2) is 2h (Q(r + 1, h/√2) − R(r + 1, h)).
         double Slope(double h) => input.RoughnessWithoutOwn(r + 1, h / root2) - input.Roughness(r + 1, h);

@@ -55,8 +55,9 @@ internal static partial class RuleDispatch
             case BandwidthRule.DiffusionFixedPoint:
                 BandwidthChecks.SecondOrder(kernel, rule);
                 return WithStandIn(DiffusionFixedPointRule.Find(input), input);
+            case BandwidthRule.Automatic when kernel.Order > 2:
+                return BlockSpectrumRule.Find(input, kernel) with { Rule = rule, ReplacedBy = BandwidthRule.BlockSpectrum };
             case BandwidthRule.Automatic:
-                BandwidthChecks.SecondOrder(kernel, rule);
                 return WithStandIn(AutomaticRule.Find(input), input);
             case BandwidthRule.DirectPlugIn:
                 return DirectPlugInRule.Find(input, kernel);

@@ -19,6 +19,7 @@ internal sealed partial class SelectionInput
     private EmpiricalSpectrum? _spectrum;
     private double[]? _squared;
     private double[]? _pairs;
+    private double _widest;
 
     private SelectionInput(double[] values, double[] masses, double effectiveCount, double deviation, double interquartileRange, BandwidthOptions options)
     {
@@ -122,12 +123,21 @@ internal sealed partial class SelectionInput
     /// <summary>The same as the mean over pairs of two different observations.</summary>
     public double RoughnessWithoutOwn(int derivative, double g) => Reflection * Spectrum.GaussianIntegral(Pairs, 0, derivative, g);
 
+    /// <summary>Makes room between the ends of the data and their repetition for bandwidths up to <paramref name="largest"/>: kernels of higher order take wider ones.</summary>
+    public void ReachUpTo(double largest)
+    {
+        if (Circle == 0 && largest > _widest)
+        {
+            (_widest, _spectrum, _squared, _pairs) = (largest, null, null, null);
+        }
+    }
+
     private EmpiricalSpectrum BuildSpectrum()
     {
         double smallest = Math.Max(Options.SmallestBandwidth / Unit ?? Largest / SearchRatio, Floor);
         return Circle > 0
             ? EmpiricalSpectrum.OnCircle(Values, Masses, N, -0.5 * Circle, Circle, smallest)
-            : EmpiricalSpectrum.Of(Values, Masses, N, smallest, Largest);
+            : EmpiricalSpectrum.Of(Values, Masses, N, smallest, Math.Max(Largest, _widest));
     }
 
     private double[] BuildPairs()

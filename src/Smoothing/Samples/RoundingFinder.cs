@@ -21,8 +21,21 @@ internal static class RoundingFinder
 
     public static RoundingUnit? Find(ValueTable table)
     {
-        RoundingUnit? found = Decimal(table, StepGrid.DoubleError) ?? Decimal(table, StepGrid.SingleError);
+        RoundingUnit? found = Decimal(table, StepGrid.DoubleError) ?? (AreSingle(table) ? Decimal(table, StepGrid.SingleError) : null);
         return found ?? Generic(table);
+    }
+
+    // The wide tolerance is for numbers that were stored in single precision and for no others: beside far larger values it would take small ones for 0.
+    private static bool AreSingle(ValueTable table)
+    {
+        double share = 0, total = 0;
+        for (int i = 0; i < table.Values.Length; i++)
+        {
+            total += table.Shares[i];
+            share += (float)table.Values[i] == table.Values[i] ? table.Shares[i] : 0;
+        }
+
+        return share >= Needed * total;
     }
 
     private static RoundingUnit? Decimal(ValueTable table, double relative)

@@ -142,4 +142,13 @@ public class SampleRoundingTests
         Assert.Null(Sample.Of([0, 0, 0]).RoundingUnit);
         Assert.Equal(1, Sample.Of([5, 5]).TiedShare);
     }
+
+    // In the tolerance of single precision about 1e9 every value of the first group would pass for 0.
+    [Fact]
+    public void RoundingUnit_TwoGroupsFarApart_IsNoGiantStep()
+    {
+        double[] near = SeededColumns.Draw("normal", 300, 3);
+        Sample sample = Sample.Of([.. near, .. near.Select(x => 1e9 + (3 * x))]);
+        Assert.True(sample.RoundingUnit is not { Step: > 1e-3 }, $"step {sample.RoundingUnit?.Step}");
+    }
 }
