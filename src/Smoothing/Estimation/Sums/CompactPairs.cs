@@ -57,9 +57,16 @@ internal sealed unsafe class CompactPairs(Sample sample, Kernel kernel)
         int degree = EdgePolynomials.Derivative(kernel, 0, new Span<double>(polynomial, EdgeMoments.MaximumDegree + 1));
         Blocks(ref _blocks, bandwidth, degree).OthersAtValues(polynomial, degree, lowerOnly: false, destination);
         ReadOnlySpan<double> weights = sample.SortedWeights;
+        if (weights.IsEmpty)
+        {
+            Span<double> own = destination[..sample.Count];
+            TensorPrimitives.Divide(own, (sample.TotalWeight - 1) * bandwidth, own);
+            return;
+        }
+
         for (int i = 0; i < sample.Count; i++)
         {
-            destination[i] /= (sample.TotalWeight - (weights.IsEmpty ? 1 : weights[i])) * bandwidth;
+            destination[i] /= (sample.TotalWeight - weights[i]) * bandwidth;
         }
     }
 

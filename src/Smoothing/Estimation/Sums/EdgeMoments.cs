@@ -1,5 +1,6 @@
 using System.Runtime.CompilerServices;
 using System.Runtime.Intrinsics;
+using System.Runtime.Intrinsics.X86;
 
 namespace Smoothing.Estimation;
 
@@ -29,6 +30,7 @@ internal static unsafe class EdgeMoments
     }
 
     /// <summary>Σ w P(a + s) from moments of s.</summary>
+    [SkipLocalsInit]
     [MethodImpl(MethodImplOptions.AggressiveOptimization)]
     public static double Evaluate(double* moments, double a, double* polynomial, int degree)
     {
@@ -86,6 +88,7 @@ internal static unsafe class EdgeMoments
     }
 
     /// <summary>Moments of sign·(X − reference)·inverse over one block, added up in a fixed order; weights may be null.</summary>
+    [SkipLocalsInit]
     [MethodImpl(MethodImplOptions.AggressiveOptimization)]
     public static void OfBlock(double* values, double* weights, int count, double reference, double signedInverse, double* m, int degree)
     {
@@ -117,6 +120,66 @@ internal static unsafe class EdgeMoments
         for (int k = 0; k <= degree; k++)
         {
             m[k] = Vector256.Sum(sums[k]);
+        }
+    }
+
+    /// <summary>The same over positions [from, to) that lie within one run of sixteen from a multiple of sixteen.</summary>
+    [MethodImpl(MethodImplOptions.AggressiveOptimization)]
+    public static void OfPart(double* values, double* weights, int from, int to, double reference, double signedInverse, double* m, int degree)
+    {
+        if (degree != 2 || weights != null)
+        {
+            OfFew(values + from, weights == null ? null : weights + from, to - from, reference, signedInverse, m, degree);
+            return;
+        }
+
+        // Four vectors from the front, what lies outside put to 0.
+        int start = from / 16 * 16;
+        Vector256<double> origin = Vector256.Create(reference);
+        Vector256<double> inverse = Vector256.Create(signedInverse);
+        Vector256<double> place = Vector256.Create(0.0, 1, 2, 3);
+        Vector256<double> low = Vector256.Create((double)(from - start));
+        Vector256<double> high = Vector256.Create((double)(to - start));
+        Vector256<double> four = Vector256.Create(4.0);
+        Vector256<double> first = default, second = default;
+        for (int i = 0; i < 16; i += 4)
+        {
+            Vector256<double> s = (Vector256.Load(values + start + i) - origin) * inverse;
+            s &= Vector256.GreaterThanOrEqual(place, low) & Vector256.LessThan(place, high);
+            first += s;
+            second = Vector256.MultiplyAddEstimate(s, s, second);
+            place += four;
+        }
+
+        m[0] = to - from;
+        if (Avx.IsSupported)
+        {
+            Vector256<double> pairs = Avx.HorizontalAdd(first, second);
+            (pairs.GetLower() + pairs.GetUpper()).Store(m + 1);
+        }
+        else
+        {
+            m[1] = Vector256.Sum(first);
+            m[2] = Vector256.Sum(second);
+        }
+    }
+
+    private static void OfFew(double* values, double* weights, int count, double reference, double signedInverse, double* m, int degree)
+    {
+        for (int k = 0; k <= degree; k++)
+        {
+            m[k] = 0;
+        }
+
+        for (int i = 0; i < count; i++)
+        {
+            double s = (values[i] - reference) * signedInverse;
+            double power = weights == null ? 1 : weights[i];
+            for (int k = 0; k <= degree; k++)
+            {
+                m[k] += power;
+                power *= s;
+            }
         }
     }
 

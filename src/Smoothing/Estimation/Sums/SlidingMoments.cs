@@ -39,6 +39,7 @@ internal unsafe struct SlidingMoments
     }
 
     /// <summary>Σ w P over cells [from, to); neither end ever falls from call to call.</summary>
+    [SkipLocalsInit]
     [MethodImpl(MethodImplOptions.AggressiveOptimization)]
     public double Sum(int from, int to, WindowEnd end, double* polynomial)
     {
@@ -75,6 +76,7 @@ internal unsafe struct SlidingMoments
     // The largest double inside cell k, to which upper moments refer; cells never reach their upper breakpoint.
     private readonly double Upper(int k) => Math.BitDecrement(_cut[k]);
 
+    [SkipLocalsInit]
     private void Push(int k)
     {
         double* block = stackalloc double[EdgeMoments.MaximumDegree + 1];
@@ -98,6 +100,7 @@ internal unsafe struct SlidingMoments
         _back.Add(block);
     }
 
+    [SkipLocalsInit]
     private void Rebuild(int from, int to)
     {
         double* block = stackalloc double[EdgeMoments.MaximumDegree + 1];
