@@ -5,11 +5,13 @@ namespace Smoothing.Numerics;
 
 /// <summary>Ascending sorts of finite doubles in time proportional to their number.</summary>
 /// <remarks>
-/// Method: least significant digit first, six digits of eleven bits, on bit patterns that order as the numbers do (sign bit turned for
-/// positive, all bits for negative numbers); digits that all keys share are skipped. Stable: equal keys keep their order.
-/// Short arrays go to the library's sort. Three to five times as fast as comparing from ten thousand values on.
+/// Method: least significant digit first, in digits of eleven bits, on bit patterns that order as the numbers do (sign bit turned for
+/// positive, all bits for negative numbers). With items: all digits but those that all keys share; stable, equal keys keep their order. Keys alone:
+/// the 33 bits from the highest in which keys differ, which part nearly all of up to ten million measured values; then one look finds what is
+/// still out of order and sorts the run of keys that agree in those bits (long runs by the next 33 bits). Short arrays go to the library's sort.
+/// Cost: four to eight times less than comparing from ten thousand values on.
 /// </remarks>
-internal static unsafe class RadixSort
+internal static unsafe partial class RadixSort
 {
     private const int Bits = 11;
     private const int Digits = 6;   // 6 · 11 ≥ 64
@@ -29,7 +31,7 @@ internal static unsafe class RadixSort
         fixed (double* source = keys)
         fixed (ulong* other = scratch)
         {
-            Run((ulong*)source, other, null, null, keys.Length);
+            Keys((ulong*)source, other, keys.Length);
         }
 
         ArrayPool<ulong>.Shared.Return(scratch);
@@ -107,7 +109,7 @@ internal static unsafe class RadixSort
             keys[i] = key ^ (~(ulong)((long)key >> 63) | 0x8000000000000000UL);
         }
 
-        if (items != null && fromItems != items)
+        if (fromItems != items)
         {
             new Span<int>(fromItems, count).CopyTo(new Span<int>(items, count));
         }
@@ -116,17 +118,6 @@ internal static unsafe class RadixSort
     [MethodImpl(MethodImplOptions.AggressiveOptimization)]
     private static void Distribute(ulong* from, ulong* to, int* fromItems, int* toItems, int* start, int shift, int count)
     {
-        if (fromItems == null)
-        {
-            for (int i = 0; i < count; i++)
-            {
-                ulong key = from[i];
-                to[start[(int)((key >> shift) & (Buckets - 1))]++] = key;
-            }
-
-            return;
-        }
-
         for (int i = 0; i < count; i++)
         {
             ulong key = from[i];

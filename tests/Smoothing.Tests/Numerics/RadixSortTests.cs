@@ -41,6 +41,26 @@ public class RadixSortTests
         Assert.Equal(expected, keys);
     }
 
+    // Keys that agree in the bits sorted by: runs short enough to insert, for the library's sort, and for another round; the last bit alone.
+    [Theory]
+    [InlineData(1e-12, 20)]
+    [InlineData(1e-12, 500)]
+    [InlineData(1e-12, 9000)]
+    [InlineData(2.3e-16, 9000)]
+    public void Sort_KeysThatDifferInTheLastBits_MatchesTheLibrary(double width, int run)
+    {
+        var random = new RandomStream(4);
+        var keys = new double[50_000];
+        for (int i = 0; i < keys.Length; i++)
+        {
+            keys[i] = (i % (keys.Length / run) * 1.7) - 3 + (width * random.NextUniform());
+        }
+
+        double[] expected = [.. keys.Order()];
+        RadixSort.Sort(keys);
+        Assert.Equal(expected, keys);
+    }
+
     [Fact]
     public void Sort_KeysWithItems_KeepsThemTogetherAndEqualKeysInOrder()
     {
