@@ -3,19 +3,22 @@ using Smoothing.Numerics;
 namespace Smoothing.Theory;
 
 /// <summary>The density of factor·X + shift.</summary>
-internal sealed class AffineTarget(TargetDensity inner, double shift, double factor) : TargetDensity
+internal sealed class AffineTarget(string name, TargetDensity inner, double shift, double factor) : TargetDensity
 {
-    public override string Name => Guard.Text($"{factor}·({inner.Name}) + {shift}");
+    public override string Name => name;
 
     public override Interval Support => new(To(inner.Support.Lower), To(inner.Support.Upper));
 
-    internal override IReadOnlyList<double> Breaks => [.. inner.Breaks.Select(To)];
+    internal override IReadOnlyList<double> Breaks { get; } = [.. inner.Breaks.Select(b => (factor * b) + shift)];
 
-    internal override IReadOnlyList<double> Splits => [.. inner.Splits.Select(To)];
+    internal override IReadOnlyList<double> Splits { get; } = [.. inner.Splits.Select(s => (factor * s) + shift)];
 
     internal override double Finest => factor * inner.Finest;
 
     internal override double Widest => factor * inner.Widest;
+
+    public static string NameOf(TargetDensity inner, double shift, double factor) =>
+        shift == 0 ? Guard.Text($"{factor}·({inner.Name})") : factor == 1 ? Guard.Text($"({inner.Name}) + {shift}") : Guard.Text($"{factor}·({inner.Name}) + {shift}");
 
     internal override bool Knows(int order) => inner.Knows(order);
 
@@ -31,21 +34,31 @@ internal sealed class AffineTarget(TargetDensity inner, double shift, double fac
 
     internal override double JumpCore(double at, int order)
     {
-        // The break whose image is `at`; mapping back could miss it by a rounding.
-        foreach (double b in inner.Breaks)
-        {
-            if (To(b) == at)
-            {
-                return inner.JumpCore(b, order) / Math.Pow(factor, order + 1);
-            }
-        }
-
-        return 0;
+        int i = BreakAt(at);
+        return i < 0 ? 0 : inner.JumpCore(inner.Breaks[i], order) / Math.Pow(factor, order + 1);
     }
 
     internal override double RoughnessCore(int order) => inner.RoughnessCore(order) / Math.Pow(factor, (2 * order) + 1);
 
     private double To(double x) => (factor * x) + shift;
 
-    private double Back(double x) => (x - shift) / factor;
+    /// <summary>Where `x` came from; the image of an end of the support or of a break goes back to it exactly, however it was rounded.</summary>
+    private double Back(double x)
+    {
+        int i = BreakAt(x);
+        return i < 0 ? (x - shift) / factor : inner.Breaks[i];
+    }
+
+    private int BreakAt(double x)
+    {
+        for (int i = 0; i < Breaks.Count; i++)
+        {
+            if (Breaks[i] == x)
+            {
+                return i;
+            }
+        }
+
+        return -1;
+    }
 }

@@ -15,6 +15,7 @@ internal sealed class GaussianFamilyError : SmoothingError
 {
     private const int Points = 20; // the integrand in τ/v is analytic but for −1: 20 points on [0, 1] miss 6^−40 of it
 
+    private readonly NormalMixture _target;
     private readonly int _s;
     private readonly int _r;
     private readonly double[] _c;
@@ -25,6 +26,7 @@ internal sealed class GaussianFamilyError : SmoothingError
 
     public GaussianFamilyError(Kernel kernel, NormalMixture target, int derivative)
     {
+        _target = target;
         _s = kernel.Order / 2;
         _r = derivative;
         _c = new double[_s];
@@ -45,6 +47,11 @@ internal sealed class GaussianFamilyError : SmoothingError
 
     public override double Bias(double x, double h)
     {
+        if (h > GaussianMixtureError.Flat)
+        {
+            return -_target.Derivative(x, _r);
+        }
+
         CompensatedSum sum = default;
         double end = h * h;
         for (int i = 0; i < _w.Length; i++)
@@ -76,13 +83,18 @@ internal sealed class GaussianFamilyError : SmoothingError
         return -Sign(_s) * Math.Pow(0.5, _s) / SpecialFunctions.Factorial(_s - 1) * 2 * Math.Pow(h, (2 * _s) - 1) * sum;
     }
 
-    public override double Spread(double x, double h) => SpreadTerms(x, h, 0) / Math.Pow(h, (2 * _r) + 1);
+    public override double Spread(double x, double h) => h > GaussianMixtureError.Flat ? 0 : SpreadTerms(x, h, 0) / Math.Pow(h, (2 * _r) + 1);
 
     public override double SpreadSlope(double x, double h) =>
         (SpreadTerms(x, h, 1) - (((2 * _r) + 1) / h * SpreadTerms(x, h, 0))) / Math.Pow(h, (2 * _r) + 1);
 
     public override (double Bias2, double Mean2) Integrals(double h)
     {
+        if (h > GaussianMixtureError.Flat)
+        {
+            return (_target.Roughness(_r), 0);
+        }
+
         CompensatedSum bias2 = default;
         CompensatedSum mean2 = default;
         double t = h * h;

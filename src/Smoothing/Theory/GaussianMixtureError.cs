@@ -12,6 +12,9 @@ namespace Smoothing.Theory;
 /// </remarks>
 internal sealed class GaussianMixtureError : SmoothingError
 {
+    /// <summary>Bandwidths, in spreads of the target, beyond which h² may overflow and nothing of the shape is left in double precision.</summary>
+    public const double Flat = 1e100;
+
     private readonly double[] _w, _m, _v;
     private readonly double[] _pairWeight, _pairDistance2, _pairVariance;
     private readonly double _roughness;
@@ -45,6 +48,11 @@ internal sealed class GaussianMixtureError : SmoothingError
 
     public override double Bias(double x, double h)
     {
+        if (h > Flat)
+        {
+            return -Smooth(x, 0, 0);
+        }
+
         CompensatedSum sum = default;
         double t = h * h;
         for (int i = 0; i < _w.Length; i++)
@@ -63,13 +71,18 @@ internal sealed class GaussianMixtureError : SmoothingError
 
     public override double BiasSlope(double x, double h) => h * Smooth(x, h * h, 2);
 
-    public override double Spread(double x, double h) => 0.5 / NormalLaw.SqrtPi / h * Smooth(x, h * h / 2, 0);
+    public override double Spread(double x, double h) => h > Flat ? 0 : 0.5 / NormalLaw.SqrtPi / h * Smooth(x, h * h / 2, 0);
 
     public override double SpreadSlope(double x, double h) =>
         0.5 / NormalLaw.SqrtPi / h * ((h / 2 * Smooth(x, h * h / 2, 2)) - (Smooth(x, h * h / 2, 0) / h));
 
     public override (double Bias2, double Mean2) Integrals(double h)
     {
+        if (h > Flat)
+        {
+            return (_roughness, 0);
+        }
+
         double twice = Pairs(2 * h * h);
         double bias2 = twice - (2 * Pairs(h * h)) + _roughness;
 

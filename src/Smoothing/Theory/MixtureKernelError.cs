@@ -30,7 +30,7 @@ internal sealed class MixtureKernelError : SmoothingError
         _kernel = kernel;
         _r = derivative;
         _radius = QuadratureError.Radius(kernel);
-        _longest = double.IsFinite(kernel.SupportRadius) ? _radius : 2;
+        _longest = double.IsFinite(kernel.SupportRadius) ? _radius : 4;
         _pairs = MixturePairs.Of(target);
         _moments = new double[MostTerms + 1];
         double[] mu = [.. Enumerable.Range(0, MostTerms + 1).Select(j => j > 0 && 2 * j < kernel.Order ? 0 : kernel.Moment(2 * j) / SpecialFunctions.Factorial(2 * j))];
@@ -100,14 +100,14 @@ internal sealed class MixtureKernelError : SmoothingError
             double term = _moments[j] * Psi(d, v, 2 * j) * (slope == 0 ? Math.Pow(h, 2 * j) : 2 * j * Math.Pow(h, (2 * j) - 1));
             sum.Add(term);
             double size = Math.Abs(term);
-            if (j > _kernel.Order && size + before <= 1e-17 * Math.Abs(sum.Value))
-            {
-                return sum.Value;
-            }
-
             if (!double.IsFinite(size) || (j > _kernel.Order + 2 && size > 1e3 * Math.Abs(sum.Value)))
             {
                 break;
+            }
+
+            if (j > _kernel.Order && size + before <= 1e-17 * Math.Abs(sum.Value))
+            {
+                return sum.Value;
             }
 
             before = size;

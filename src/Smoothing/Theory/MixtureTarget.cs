@@ -8,21 +8,16 @@ internal sealed class MixtureTarget : TargetDensity
     private readonly double[] _weights;
     private readonly TargetDensity[] _parts;
 
-    public MixtureTarget(ReadOnlySpan<double> weights, IReadOnlyList<TargetDensity> parts)
+    private MixtureTarget(double[] weights, TargetDensity[] parts)
     {
-        if (weights.Length == 0 || weights.Length != parts.Count)
-        {
-            throw new ArgumentException(Guard.Text($"weights and targets must have one length above 0, but have {weights.Length} and {parts.Count}: pass one weight for every target."), nameof(weights));
-        }
-
-        _weights = TargetSearch.Weights(weights);
-        _parts = [.. parts.Select(p => Guard.Given(p, nameof(parts)))];
+        _weights = weights;
+        _parts = parts;
         Breaks = [.. _parts.SelectMany(p => p.Breaks).Distinct().Order()];
         Splits = [.. _parts.SelectMany(p => p.Splits).Concat(Breaks).Distinct().Order()];
         Support = new Interval(_parts.Min(p => p.Support.Lower), _parts.Max(p => p.Support.Upper));
     }
 
-    public override string Name => "mixture of " + string.Join(", ", _parts.Select(p => p.Name));
+    public override string Name => NameOf(_parts);
 
     public override Interval Support { get; }
 
@@ -31,6 +26,23 @@ internal sealed class MixtureTarget : TargetDensity
     internal override IReadOnlyList<double> Splits { get; }
 
     internal override double Finest => _parts.Min(p => p.Finest);
+
+    /// <summary>A mixture of the parts that have weight; of normal mixtures alone again a normal mixture, with its closed forms.</summary>
+    public static TargetDensity Of(ReadOnlySpan<double> weights, IReadOnlyList<TargetDensity> targets)
+    {
+        if (weights.Length == 0 || weights.Length != targets.Count)
+        {
+            throw new ArgumentException(Guard.Text($"weights and targets must have one length above 0, but have {weights.Length} and {targets.Count}: pass one weight for every target."), nameof(weights));
+        }
+
+        double[] all = TargetSearch.Weights(weights);
+        int[] present = [.. Enumerable.Range(0, all.Length).Where(i => Guard.Given(targets[i], Guard.Text($"targets[{i}]")) is not null && all[i] > 0)];
+        double[] w = [.. present.Select(i => all[i])];
+        TargetDensity[] parts = [.. present.Select(i => targets[i])];
+        return parts.Length == 1 ? parts[0]
+            : parts.All(p => p is NormalMixture) ? NormalMixture.Joined(NameOf(parts), w, [.. parts.Cast<NormalMixture>()])
+            : new MixtureTarget(w, parts);
+    }
 
     internal override bool Knows(int order) => _parts.All(p => p.Knows(order));
 
@@ -54,12 +66,14 @@ internal sealed class MixtureTarget : TargetDensity
         return _parts[i].DrawCore(ref random);
     }
 
+    private static string NameOf(TargetDensity[] parts) => "mixture of " + string.Join(", ", parts.Select(p => p.Name));
+
     private double Sum(Func<TargetDensity, double> part)
     {
         double sum = 0;
         for (int i = 0; i < _parts.Length; i++)
         {
-            sum += _weights[i] == 0 ? 0 : _weights[i] * part(_parts[i]);
+            sum += _weights[i] * part(_parts[i]);
         }
 
         return sum;

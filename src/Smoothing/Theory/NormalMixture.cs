@@ -38,7 +38,12 @@ public sealed class NormalMixture : TargetDensity
         Name = name;
         _means = means.ToArray();
         _deviations = standardDeviations.ToArray();
-        Splits = [.. _means.SelectMany((m, i) => new[] { -9.0, -3, 0, 3, 9 }.Select(c => m + (c * _deviations[i]))).Distinct().Order()];
+        Splits = [.. Present().SelectMany(i => new[] { -9.0, -3, 0, 3, 9 }.Select(c => _means[i] + (c * _deviations[i]))).Distinct().Order()];
+    }
+
+    private NormalMixture(string name, NormalMixture from, double shift, double factor)
+        : this(name, from._weights, [.. from._means.Select(m => (factor * m) + shift)], [.. from._deviations.Select(s => factor * s)])
+    {
     }
 
     /// <summary>The fifteen mixtures of Marron and Wand, in their order, with their names.</summary>
@@ -68,8 +73,11 @@ public sealed class NormalMixture : TargetDensity
     {
         get
         {
+            // In units of the largest length, so that squares neither overflow nor vanish.
             double mean = Mean;
-            return Math.Sqrt(_weights.Select((w, i) => w * ((_deviations[i] * _deviations[i]) + ((_means[i] - mean) * (_means[i] - mean)))).Sum());
+            double unit = Math.Max(_deviations.Max(), _means.Max(m => Math.Abs(m - mean)));
+            double Square(double v) => v / unit * (v / unit);
+            return unit * Math.Sqrt(_weights.Select((w, i) => w * (Square(_deviations[i]) + Square(_means[i] - mean))).Sum());
         }
     }
 
@@ -77,7 +85,7 @@ public sealed class NormalMixture : TargetDensity
 
     internal override IReadOnlyList<double> Splits { get; }
 
-    internal override double Finest => _deviations.Min();
+    internal override double Finest => Present().Min(i => _deviations[i]);
 
     internal override double Widest => StandardDeviation;
 
@@ -87,9 +95,26 @@ public sealed class NormalMixture : TargetDensity
     /// <returns>A mixture of one component.</returns>
     public static NormalMixture Normal(double mean = 0, double standardDeviation = 1) => new("normal", [1], [mean], [standardDeviation]);
 
-    internal static double Phi(double d, double variance, int order)
+    /// <summary>Σ wᵢ fᵢ of normal mixtures, again one.</summary>
+    internal static NormalMixture Joined(string name, ReadOnlySpan<double> weights, IReadOnlyList<NormalMixture> parts)
     {
-        double s = Math.Sqrt(variance);
+        var w = new List<double>();
+        for (int i = 0; i < parts.Count; i++)
+        {
+            foreach (double v in parts[i]._weights)
+            {
+                w.Add(weights[i] * v);
+            }
+        }
+
+        double sum = w.Sum(); // 1 but for the roundings that the parts were allowed
+        return new(name, [.. w.Select(v => v / sum)], [.. parts.SelectMany(p => p._means)], [.. parts.SelectMany(p => p._deviations)]);
+    }
+
+    internal static double Phi(double d, double variance, int order) => PhiOf(d, Math.Sqrt(variance), order);
+
+    internal static double PhiOf(double d, double s, int order)
+    {
         double u = d / s;
         double below = 0;
         double hermite = 1;
@@ -104,6 +129,8 @@ public sealed class NormalMixture : TargetDensity
         return density == 0 ? 0 : scale * hermite * density;
     }
 
+    internal override TargetDensity Moved(double shift, double factor) => new NormalMixture(AffineTarget.NameOf(this, shift, factor), this, shift, factor);
+
     internal override double ValueCore(double x) => DerivativeCore(x, 0);
 
     internal override double DerivativeCore(double x, int order)
@@ -116,7 +143,7 @@ public sealed class NormalMixture : TargetDensity
         double sum = 0;
         for (int i = 0; i < _weights.Length; i++)
         {
-            sum += _weights[i] * Phi(x - _means[i], _deviations[i] * _deviations[i], order);
+            sum += _weights[i] == 0 ? 0 : _weights[i] * PhiOf(x - _means[i], _deviations[i], order);
         }
 
         return sum;
@@ -138,7 +165,7 @@ public sealed class NormalMixture : TargetDensity
         double z = NormalLaw.Quantile(probability);
         double lower = double.PositiveInfinity;
         double upper = double.NegativeInfinity;
-        for (int i = 0; i < _weights.Length; i++)
+        foreach (int i in Present())
         {
             double q = _means[i] + (z * _deviations[i]);
             lower = Math.Min(lower, q);
@@ -176,13 +203,16 @@ public sealed class NormalMixture : TargetDensity
         {
             for (int j = 0; j < _weights.Length; j++)
             {
-                double v = (_deviations[i] * _deviations[i]) + (_deviations[j] * _deviations[j]);
-                sum.Add(_weights[i] * _weights[j] * Phi(_means[i] - _means[j], v, 2 * order));
+                double w = _weights[i] * _weights[j];
+                sum.Add(w == 0 ? 0 : w * PhiOf(_means[i] - _means[j], double.Hypot(_deviations[i], _deviations[j]), 2 * order));
             }
         }
 
         return order % 2 == 0 ? sum.Value : -sum.Value;
     }
+
+    /// <summary>The components that are there at all.</summary>
+    private IEnumerable<int> Present() => Enumerable.Range(0, _weights.Length).Where(i => _weights[i] > 0);
 
     private double Survival(double x)
     {

@@ -2,37 +2,57 @@ using Smoothing.Numerics;
 
 namespace Smoothing.Theory;
 
-/// <summary>Quadrature and quantiles shared by the targets.</summary>
+/// <summary>Quantiles and weights shared by the targets.</summary>
 internal static class TargetSearch
 {
-    public static double Integrate(Func<double, double> f, double from, double to, IEnumerable<double> cuts, double relativeError) =>
-        Quadrature.Integrate(f, from, to, cuts, relativeError);
-
-    /// <summary>Root of F(x) = p; infinite ends are replaced by doubling steps from the middle split.</summary>
+    /// <summary>inf{x : F(x) ≥ p}: brackets that double outward from the middle, or halve towards a finite lower end, then a root.</summary>
     public static double Quantile(TargetDensity target, double p)
     {
-        double lower = target.Support.Lower;
-        double upper = target.Support.Upper;
-        double start = double.IsFinite(lower) ? lower : double.IsFinite(upper) ? upper : 0;
-        if (!double.IsFinite(lower))
+        (double lower, double upper) = target.Support;
+        bool openBelow = double.IsInfinity(lower);
+        bool openAbove = double.IsInfinity(upper);
+        double start = !openBelow ? lower : !openAbove ? upper : 0;
+        double step = target.Splits is { Count: > 1 } s ? s[^1] - s[0] : 1;
+        if (openBelow)
         {
-            double step = 1;
             for (lower = start - step; target.CumulativeCore(lower) > p; step *= 2)
             {
                 lower = start - step;
             }
         }
 
-        if (!double.IsFinite(upper))
+        if (openAbove)
         {
-            double step = 1;
             for (upper = start + step; target.CumulativeCore(upper) < p; step *= 2)
             {
                 upper = start + step;
             }
         }
 
-        return Roots.Between(x => target.CumulativeCore(x) - p, lower, upper);
+        // Towards a finite lower end the digits that count are those of the distance from it.
+        double end = lower;
+        for (double middle = Half(end, upper); !openBelow && middle > end && middle < upper && target.CumulativeCore(middle) >= p; middle = Half(end, upper))
+        {
+            upper = middle;
+        }
+
+        lower = openBelow ? lower : Half(end, upper);
+        double x = Roots.Between(v => target.CumulativeCore(v) - p, lower, upper);
+
+        // On a level stretch of F the root may be any point of it; the quantile is its left end.
+        double before = x - (1e-9 * (upper - lower));
+        if (before > lower && target.CumulativeCore(before) >= p)
+        {
+            for (int i = 0; i < 200 && before > lower && before - lower > 1e-15 * Math.Abs(before); i++)
+            {
+                double middle = Half(lower, before);
+                (lower, before) = target.CumulativeCore(middle) >= p ? (lower, middle) : (middle, before);
+            }
+
+            return before;
+        }
+
+        return x;
     }
 
     /// <summary>Weights that are not negative and sum to 1 within 1e-12.</summary>
@@ -43,7 +63,7 @@ internal static class TargetSearch
         {
             if (!(weights[i] >= 0 && double.IsFinite(weights[i])))
             {
-                throw new ArgumentException(Guard.Text($"weights[{i}] must be at least 0, but is {weights[i]}: pass shares of the mixture."), nameof(weights));
+                throw new ArgumentException(Guard.Text($"weights[{i}] must be at least 0 and finite, but is {weights[i]}: pass shares of the mixture."), nameof(weights));
             }
 
             sum.Add(weights[i]);
@@ -56,4 +76,6 @@ internal static class TargetSearch
 
         return weights.ToArray();
     }
+
+    private static double Half(double from, double to) => from + ((to - from) / 2);
 }

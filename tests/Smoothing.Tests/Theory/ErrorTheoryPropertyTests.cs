@@ -8,7 +8,7 @@ namespace Smoothing.Tests.Theory;
 /// <summary>Exact errors of random kernels on random mixtures against integrals by the tests' own code.</summary>
 public class ErrorTheoryPropertyTests
 {
-    [Property(MaxTest = 150)]
+    [Property(MaxTest = 150, Replay = "1992,711")]
     public void BiasAndVariance_RandomCase_AreTheDirectIntegrals(int seed)
     {
         var c = new RandomCase(seed);
@@ -24,7 +24,7 @@ public class ErrorTheoryPropertyTests
         Near.Absolute(error, theory.MeanSquaredError(c.X, c.H, c.N), 1e-11 * error + (4e-13 * top * Math.Abs(mean - f)) + (1e-11 * mean * mean / c.N), "MSE " + c);
     }
 
-    [Property(MaxTest = 100)]
+    [Property(MaxTest = 100, Replay = "1992,711")]
     public void Mise_RandomCase_IsTheSpectralIntegral(int seed)
     {
         var c = new RandomCase(seed);
