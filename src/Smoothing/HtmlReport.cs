@@ -60,7 +60,7 @@ internal static class HtmlReport
                 }
                 else if (block is ReportBlock.Paragraph paragraph)
                 {
-                    if (section.Blocks.Count == 1)
+                    if (!section.IsList)
                     {
                         html.Append("<p>").Append(Text(paragraph.Text)).Append("</p>\n");
                         continue;

@@ -17,7 +17,7 @@ internal static class MarkdownReport
         foreach (ReportSection section in report.Sections)
         {
             text.Append("## ").Append(Escape(section.Heading)).Append("\n\n");
-            bool bullets = section.Blocks.Count > 1;
+            bool bullets = section.IsList;
             bool afterBullet = false;
             foreach (ReportBlock block in section.Blocks)
             {
@@ -42,8 +42,8 @@ internal static class MarkdownReport
                 }
                 else if (block is ReportBlock.Paragraph paragraph)
                 {
-                    text.Append(bullets ? "- " : "").Append(Escape(paragraph.Text)).Append('\n');
-                    afterBullet = true;
+                    text.Append(bullets ? "- " : "").Append(Escape(paragraph.Text)).Append(bullets ? "\n" : "\n\n");
+                    afterBullet = bullets;
                 }
             }
 

@@ -4,7 +4,11 @@ namespace Smoothing;
 internal sealed record ReportModel(string Title, FigureModel? Figure, IReadOnlyList<ReportSection> Sections, string Method);
 
 /// <summary>One heading and what stands under it.</summary>
-internal sealed record ReportSection(string Heading, IReadOnlyList<ReportBlock> Blocks);
+internal sealed record ReportSection(string Heading, IReadOnlyList<ReportBlock> Blocks)
+{
+    /// <summary>Whether the section is a list of points; sentences beside a table or a picture stand by themselves.</summary>
+    public bool IsList => Blocks.Count > 1 && Blocks.All(block => block is ReportBlock.Paragraph);
+}
 
 /// <summary>A paragraph, a picture, or a table with a header row.</summary>
 internal abstract record ReportBlock

@@ -1,6 +1,7 @@
 using Smoothing.Bandwidths;
 using Smoothing.Estimation;
 using Smoothing.Inference;
+using Smoothing.Kernels;
 using Smoothing.Numerics;
 using Smoothing.Samples;
 
@@ -27,7 +28,7 @@ internal static class StudyCautions
 
         if (sample.EffectiveCount < Few)
         {
-            cautions.Add(new(CautionKind.FewValues, Guard.Text($"Only {StudyNumbers.CountWord(Math.Floor(sample.EffectiveCount))} {(sample.EffectiveCount < 2 ? "value" : "values")}: the curve shows where they lie and little of their shape. About {4 * Few} would show two groups apart.")));
+            cautions.Add(new(CautionKind.FewValues, Guard.Text($"{(sample.EffectiveCount < 2 ? "Only one value: the curve shows where it lies and nothing of a shape." : Guard.Text($"Only {StudyNumbers.CountWord(Math.Floor(sample.EffectiveCount))} values: the curve shows where they lie and little of their shape."))} About {4 * Few} would show two groups apart.")));
         }
 
         if (sample.IsWeighted && sample.WeightMeaning == WeightMeaning.Relative && sample.EffectiveCount < 0.8 * sample.Count)
@@ -50,18 +51,25 @@ internal static class StudyCautions
     {
         Sample sample = study.CurveSample;
         double h = study.Bandwidth;
+        string width = StudyNumbers.WithUnit(StudyNumbers.Significant(h, 2), study.Unit);
+        bool atFloor = study.Bandwidth.Status == BandwidthStatus.RoundingFloor;
+
+        // The floor of the rounding is half its step for the Gaussian kernel; a higher one is that of the heaps.
+        double gaussian = study.Options.Kernel.Order == 2 ? study.Bandwidth.EquivalentFor(Kernel.Gaussian) : h;
+        bool heapsHidden = atFloor && sample.HeapingUnit is not null && gaussian > 0.6 * (sample.RoundingUnit?.Step ?? 0);
         if (sample.HeapingUnit is { } heaps)
         {
             string step = StudyNumbers.WithUnit(StudyNumbers.AsGiven(heaps.Step), study.Unit);
-            string kept = h >= heaps.Step / 2
-                ? Guard.Text($"bumps at those places are rounding, and the smoothing ({StudyNumbers.WithUnit(StudyNumbers.Significant(h, 2), study.Unit)}) is wide enough to hide them.")
-                : Guard.Text($"bumps at those places are rounding; the smoothing ({StudyNumbers.WithUnit(StudyNumbers.Significant(h, 2), study.Unit)}) may not hide all of them. Record the values as read, or read no bump narrower than {step}.");
+            string kept = heapsHidden ? Guard.Text($"bumps at those places are rounding, and the smoothing was kept at {width} to hide them. Nothing finer can be seen; values recorded as read would show more.")
+                : h >= heaps.Step / 2 ? Guard.Text($"bumps at those places are rounding, and the smoothing ({width}) is wide enough to hide them.")
+                : Guard.Text($"bumps at those places are rounding; the smoothing ({width}) may not hide all of them. Record the values as read, or read no bump narrower than {step}.");
             cautions.Add(new(CautionKind.Heaping, Guard.Text($"{100 * heaps.Share:F0} % of the values sit on multiples of {step}, where {100 * heaps.ExpectedShare:F0} % would by chance: {kept}")));
         }
 
-        if (sample.RoundingUnit is { } unit && (study.Bandwidth.Status == BandwidthStatus.RoundingFloor || unit.Step > h))
+        if (sample.RoundingUnit is { } unit && !heapsHidden && (atFloor || unit.Step > h))
         {
-            cautions.Add(new(CautionKind.Rounding, Guard.Text($"The values are rounded to {StudyNumbers.WithUnit(StudyNumbers.AsGiven(unit.PrintedStep), study.Unit)}, and that limits the resolution: nothing finer can be seen. Finer records would show more.")));
+            string kept = atFloor ? Guard.Text($", and the smoothing was kept at {width} for it") : "";
+            cautions.Add(new(CautionKind.Rounding, Guard.Text($"The values are rounded to {StudyNumbers.WithUnit(StudyNumbers.AsGiven(unit.PrintedStep), study.Unit)}{kept}: nothing finer can be seen. Finer records would show more.")));
         }
     }
 
@@ -177,11 +185,11 @@ internal static class StudyCautions
         int peaks = StudyPeaks.Named(study).Count;
         if (study.Groups is { Tests.Count: > 0 } evidence && peaks > evidence.AtLeast + Accidents)
         {
-            double wide = BandwidthRules.NormalReference(study.CurveSample, study.Options.Kernel, new BandwidthOptions { Support = study.Options.Support });
-            cautions.Add(new(CautionKind.Smoothing, Guard.Text($"The curve has {StudyNumbers.CountWord(peaks)} peaks where the tests establish {StudyNumbers.CountWord(evidence.AtLeast)}: it follows rounding or chance, and its details mean nothing. Give a wider bandwidth than {StudyNumbers.WithUnit(StudyNumbers.Significant(choice.Value, 2), study.Unit)}; for one plain hill it would be {StudyNumbers.WithUnit(StudyNumbers.Significant(wide, 2), study.Unit)}.")));
+            double wide = choice.CandidatesDisagree ? choice.Candidates.Values.Max() : BandwidthRules.NormalReference(study.CurveSample, study.Options.Kernel, new BandwidthOptions { Support = study.Options.Support });
+            string why = choice.CandidatesDisagree ? "the other way of choosing it gives" : "for one plain hill it would be";
+            cautions.Add(new(CautionKind.Smoothing, Guard.Text($"The curve has {StudyNumbers.CountWord(peaks)} peaks where the tests establish {StudyNumbers.CountWord(evidence.AtLeast)}: it follows rounding or chance, and its details mean nothing. Give a wider bandwidth than {StudyNumbers.WithUnit(StudyNumbers.Significant(choice.Value, 2), study.Unit)}; {why} {StudyNumbers.WithUnit(StudyNumbers.Significant(wide, 2), study.Unit)}.")));
         }
-
-        if (choice.CandidatesDisagree && choice.Candidates.Count > 1)
+        else if (choice.CandidatesDisagree && choice.Candidates.Count > 1)
         {
             double least = choice.Candidates.Values.Min();
             double most = choice.Candidates.Values.Max();

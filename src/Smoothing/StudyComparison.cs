@@ -84,8 +84,8 @@ internal static class StudyComparison
             return Guard.Text($"A difference from {name} is not shown (p {p}); that is no proof that there is none.");
         }
 
-        string[] places = [.. Places(study, result.Band.Higher, "more"), .. Places(study, result.Band.Lesser, "fewer")];
-        string where = places.Length > 0 ? Guard.Text($": {string.Join(", ", places)}.") : "; where they differ is not told at this level.";
+        string[] places = [.. new[] { Places(study, result.Band.Higher, "more"), Places(study, result.Band.Lesser, "fewer") }.Where(part => part.Length > 0)];
+        string where = places.Length > 0 ? Guard.Text($": {string.Join("; ", places)}.") : "; where they differ is not told at this level.";
         return Guard.Text($"The values differ from {name} (p {p}){where}");
     }
 
@@ -124,6 +124,10 @@ internal static class StudyComparison
 
     public static string P(double p) => p <= 0.001 ? "at most 0.001" : p >= 1 ? "above 0.5" : "= " + StudyNumbers.PValue(p);
 
-    private static IEnumerable<string> Places(DensityStudy study, IReadOnlyList<Interval> stretches, string what) =>
-        stretches.Take(3).Select(s => Guard.Text($"{what} {StudyPeaks.Stretch(study, s, "between ", " and ")}"));
+    // "fewer from 37 to 39, 41 to 43 and 44 to 49 µm"; stretches that look alike after rounding are said once.
+    private static string Places(DensityStudy study, IReadOnlyList<Interval> stretches, string what)
+    {
+        string[] places = [.. stretches.Select(s => (StudyPeaks.Around(study, s.Lower), StudyPeaks.Around(study, s.Upper))).Select(s => s.Item1 == s.Item2 ? "near " + s.Item1 : s.Item1 + " to " + s.Item2).Distinct().Take(4)];
+        return places.Length == 0 ? "" : Guard.Text($"{what} {(places[0].StartsWith("near", StringComparison.Ordinal) ? "" : "from ")}{StudyNumbers.WithUnit(StudyNumbers.Listed(places), study.Unit)}");
+    }
 }

@@ -112,7 +112,9 @@ internal static class StudyFigure
         return stretches;
     }
 
-    private static IEnumerable<Peak> Seen(DensityStudy study) => StudyPeaks.Named(study).Where(p => study.Picture.Contains(p.Location));
+    // More marks than the table has rows would hide the curve.
+    private static IEnumerable<Peak> Seen(DensityStudy study) =>
+        StudyGroups.Outstanding(StudyPeaks.Named(study), StudyGroups.MostListed).Where(p => study.Picture.Contains(p.Location)).OrderBy(p => p.Location);
 
     private static string Around(DensityStudy study, double place) => StudyNumbers.WithUnit(StudyPeaks.Around(study, place), study.Unit);
 
@@ -121,7 +123,7 @@ internal static class StudyFigure
 
     private static string Alternative(DensityStudy study)
     {
-        Peak[] peaks = [.. Seen(study)];
+        Peak[] peaks = [.. StudyPeaks.Named(study).Where(p => study.Picture.Contains(p.Location))];
         string[] places = [.. peaks.Take(4).Select(p => StudyPeaks.Around(study, p.Location))];
         string shape = peaks.Length == 0 ? "steps" : peaks.Length == 1
             ? Guard.Text($"one hump, highest near {Around(study, peaks[0].Location)}")

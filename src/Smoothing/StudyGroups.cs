@@ -11,7 +11,7 @@ internal static class StudyGroups
     private const double MostValues = 1e7;
 
     // A longer list of peaks is a list of accidents; the report says how many more there are.
-    private const int MostListed = 8;
+    public const int MostListed = 8;
 
     /// <summary>The verdict in one sentence.</summary>
     public static string Verdict(DensityStudy study)
@@ -95,7 +95,7 @@ internal static class StudyGroups
         ];
     }
 
-    private static IEnumerable<Peak> Outstanding(IReadOnlyList<Peak> named, int count) => named.OrderByDescending(p => p.Prominence).Take(count);
+    public static IEnumerable<Peak> Outstanding(IReadOnlyList<Peak> named, int count) => named.OrderByDescending(p => p.Prominence).Take(count);
 
     /// <summary>The evidence for a peak of the curve; null where it was not tested.</summary>
     public static GroupPeak? Match(DensityStudy study, Peak peak) => study.Groups?.Peaks

@@ -20,7 +20,7 @@ internal static class StudyMethod
         string limits = study.Options.Support is { } support && study.Options.Boundary != BoundaryCorrection.None
             ? Guard.Text($", {Correction(study.Options.Boundary)} on {Range(support)}")
             : "";
-        return Guard.Text($"{study.Options.Kernel.Name} kernel estimate of n = {StudyNumbers.Count(study.Sample.Count)} values{weights}{missing}{atoms}{limits}; bandwidth h = {StudyNumbers.WithUnit(StudyNumbers.Significant(study.Bandwidth, 3), study.Unit)} ({Rule(study.Bandwidth)}){Band(study)}{Shares(study)}{Groups(study)}{Comparison(study)}; Smoothing {Version}.");
+        return Guard.Text($"{study.Options.Kernel.Name} kernel estimate of n = {StudyNumbers.Count(study.Sample.Count)} {(study.Sample.Count == 1 ? "value" : "values")}{weights}{missing}{atoms}{limits}; bandwidth h = {StudyNumbers.WithUnit(StudyNumbers.Significant(study.Bandwidth, 3), study.Unit)} ({Rule(study.Bandwidth)}){Band(study)}{Shares(study)}{Groups(study)}{Comparison(study)}; Smoothing {Version}.");
     }
 
     private static string Band(DensityStudy study) => study.Band is { } band
@@ -35,9 +35,9 @@ internal static class StudyMethod
         }
 
         string shares = study.Limits.Count > 0 ? "shares: " + study.Limits[0].Beyond.Method : "";
-        string quantiles = study.Quantiles.Count > 0 ? "quantiles: " + char.ToLowerInvariant(study.Quantiles[0].Method[0]) + study.Quantiles[0].Method[1..] : "";
+        string quantiles = study.Quantiles.Count > 0 && study.Sample.Minimum < study.Sample.Maximum ? "quantiles: " + char.ToLowerInvariant(study.Quantiles[0].Method[0]) + study.Quantiles[0].Method[1..] : "";
         string both = string.Join(", ", new[] { shares, quantiles }.Where(part => part.Length > 0));
-        return Guard.Text($"; {both}, level {StudyNumbers.AsGiven(Math.Round(100 * study.Options.Level, 10))} %");
+        return both.Length == 0 ? "" : Guard.Text($"; {both}, level {StudyNumbers.AsGiven(Math.Round(100 * study.Options.Level, 10))} %");
     }
 
     private static string Groups(DensityStudy study) => study.Groups is { Tests.Count: > 0 } evidence
@@ -60,7 +60,7 @@ internal static class StudyMethod
         return choice.Status switch
         {
             BandwidthStatus.Replaced when choice is { Rule: not BandwidthRule.Automatic, ReplacedBy: { } other } => Guard.Text($"{name} found nothing; {Name(other)} in its place"),
-            BandwidthStatus.RoundingFloor => Guard.Text($"{name}, raised because of the rounding of the data"),
+            BandwidthStatus.RoundingFloor => Guard.Text($"{Name(choice.Rule)}, kept from falling below what the rounding of the data allows"),
             BandwidthStatus.EndOfSearch => Guard.Text($"{name}, at the end of its search"),
             _ => name,
         };

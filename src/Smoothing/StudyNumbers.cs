@@ -195,7 +195,7 @@ internal static class StudyNumbers
         string[] parts = value.ToString("E" + (Math.Max(1, digits) - 1).ToString(CultureInfo.InvariantCulture), CultureInfo.InvariantCulture).Split('E');
         string mantissa = parts[0].Contains('.', StringComparison.Ordinal) ? parts[0].TrimEnd('0').TrimEnd('.') : parts[0];
         string exponent = int.Parse(parts[1], CultureInfo.InvariantCulture).ToString(CultureInfo.InvariantCulture);
-        return Minus(mantissa) + " × 10" + string.Concat(exponent.Select(c => c == '-' ? '⁻' : "⁰¹²³⁴⁵⁶⁷⁸⁹"[c - '0']));
+        return (mantissa == "1" ? "10" : Minus(mantissa) + " × 10") + string.Concat(exponent.Select(c => c == '-' ? '⁻' : "⁰¹²³⁴⁵⁶⁷⁸⁹"[c - '0']));
     }
 
     // From 10,000 up thousands are set apart; 0 has no sign.

@@ -107,7 +107,7 @@ internal static partial class StudyReport
     }
 
     /// <summary>An extreme as it was recorded, or, where no rounding was noticed, as finely as the quartiles are given.</summary>
-    public static string End(Sample sample, double value) => sample.RoundingUnit is null ? StudyNumbers.Rounded(value, Resolution(sample)) : StudyNumbers.AsGiven(value);
+    public static string End(Sample sample, double value) => StudyNumbers.Rounded(value, sample.RoundingUnit is { } unit ? 10 * unit.PrintedStep : Resolution(sample));
 
     private static string Atom(DensityStudy study, Atom atom)
     {
@@ -145,6 +145,7 @@ internal static partial class StudyReport
         {
             blocks.Add(LimitTable(study));
             blocks.AddRange(study.Limits.SelectMany(l => Told(l.Beyond.Notes)).Select(note => new ReportBlock.Paragraph(note)));
+            blocks.AddRange(study.Limits.Select(l => Ties(study, l)).Where(text => text.Length > 0).Select(text => new ReportBlock.Paragraph(text)));
         }
 
         if (study.Quantiles.Count > 0 && study.Sample.Minimum < study.Sample.Maximum)
@@ -174,7 +175,16 @@ internal static partial class StudyReport
     private static string Probability(QuantileEstimate quantile) => StudyNumbers.AsGiven(Math.Round(100 * quantile.Probability, 10));
 
     // Dependence has a sentence of its own, for all answers at once.
-    private static IEnumerable<string> Told(IReadOnlyList<string> notes) => notes.Where(note => !note.StartsWith(EffectiveSize.DependenceNote, StringComparison.Ordinal));
+    private static IEnumerable<string> Told(IReadOnlyList<string> notes) => notes.Where(note => !note.StartsWith(EffectiveSize.DependenceNote, StringComparison.Ordinal) && !note.Contains(Shares.TieNote, StringComparison.Ordinal));
+
+    private static string Ties(DensityStudy study, LimitAnswer answer)
+    {
+        double at = Shares.Between(study.Sample, answer.Limit, answer.Limit, study.Options.Level).Counted;
+        string limit = StudyNumbers.WithUnit(StudyNumbers.AsGiven(answer.Limit), study.Unit);
+        return at == 0 ? ""
+            : study.Sample.IsWeighted && study.Sample.WeightMeaning == WeightMeaning.Relative ? Guard.Text($"{StudyNumbers.Percent(at / study.Sample.TotalWeight, at / study.Sample.TotalWeight)} of the weight lies at {limit} exactly and does not count as above it.")
+            : Guard.Text($"{(at == 1 ? "One value equals" : StudyNumbers.Count(at) + " values equal")} {limit} exactly and {(at == 1 ? "does" : "do")} not count as above it.");
+    }
 
     // "Since neighbours resemble each other, the 1,461 values count as 76 independent ones for the share above 30 °C, 29 for the 50 % quantile."
     private static string Independent(DensityStudy study)

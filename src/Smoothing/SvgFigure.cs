@@ -135,7 +135,7 @@ internal static class SvgFigure
             }
         }
 
-        foreach (SvgMark mark in layout.Marks)
+        foreach (SvgMark mark in layout.Marks.Where(m => m.Label.Length > 0))
         {
             Label(svg, mark.LabelX, mark.Y, mark.Anchor, mark.Label, mark.IsAtom ? "sm-t" : "sm-t sm-lt");
         }

@@ -8,6 +8,7 @@ internal sealed class SvgLayout
 
     private const double Row = 18;
     private const int MostRows = 6;
+    private const double MostOverPeak = 3;
 
     public SvgLayout(FigureModel figure, double width, double height)
     {
@@ -22,7 +23,7 @@ internal sealed class SvgLayout
         foreach (double edge in figure.Upper.Concat(figure.Biased.Count > 0 ? figure.Corrected : []))
         {
             // A band that leaves the picture at a point or two must not press the curve flat.
-            highest = Math.Max(highest, double.IsFinite(edge) ? Math.Min(edge, 2.5 * peak) : 2.5 * peak);
+            highest = Math.Max(highest, double.IsFinite(edge) ? Math.Min(edge, MostOverPeak * peak) : MostOverPeak * peak);
         }
 
         PerUnit = Unit(highest);
@@ -152,11 +153,12 @@ internal sealed class SvgLayout
         return placed;
     }
 
-    // Left to right, each label in the first row where it runs into none: lines start at their own label, so those further right pass below it.
+    // Left to right, each label in the first row where it meets no other label and no line, and its own line meets none; a line that finds no row has no label.
     private List<SvgMark> PlaceMarks(FigureModel figure)
     {
-        var marks = new List<SvgMark>();
-        var rows = new List<List<(double Left, double Right)>>();
+        var placed = new List<(int Row, double X, double Left, double Right)>();
+        var marks = new List<(SvgMark Mark, int Row)>();
+        int rows = 0;
         IEnumerable<(double X, string Label, bool IsAtom)> all = figure.Limits.Select(l => (l.X, l.Label, false)).Concat(figure.Atoms.Select(a => (a.X, a.Label, true)));
         foreach ((double at, string label, bool isAtom) in all.Where(m => m.X >= From && m.X <= To).OrderBy(m => m.X))
         {
@@ -165,22 +167,25 @@ internal sealed class SvgLayout
             double length = (words.Length * Character * 1.06) + 12;
             double start = x + length <= Width ? x : x - length >= 0 ? x - length : Math.Max(0, Width - length);
             double end = start + length;
-            int row = rows.FindIndex(taken => taken.All(t => t.Right < start || t.Left > end));
-            if (row < 0)
+            int row = 0;
+            while (row < MostRows && placed.Any(p => row == p.Row ? p.Left <= end && p.Right >= start : row > p.Row ? p.X > start && p.X < end : x > p.Left && x < p.Right))
             {
-                row = rows.Count < MostRows ? rows.Count : MostRows - 1;
-                if (row == rows.Count)
-                {
-                    rows.Add([]);
-                }
+                row++;
             }
 
-            rows[row].Add((start, end));
-            marks.Add(new SvgMark(x, Top + 10 + (Row * row), words, end == x ? end - 6 : start + 6, end == x ? "end" : "start", isAtom));
+            if (row < MostRows)
+            {
+                placed.Add((row, x, start, end));
+                rows = Math.Max(rows, row + 1);
+            }
+
+            bool toTheLeft = start + length == x;
+            marks.Add((new SvgMark(x, Top + 10 + (Row * row), row < MostRows ? words : "", toTheLeft ? x - 6 : start + 6, toTheLeft ? "end" : "start", isAtom), row));
         }
 
-        Top += Row * rows.Count;
-        return marks;
+        double top = Top + (Row * rows);
+        Top = top;
+        return [.. marks.Select(m => m.Row < MostRows ? m.Mark : m.Mark with { Y = top + 10 })];
     }
 }
 

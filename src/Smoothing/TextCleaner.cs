@@ -8,6 +8,9 @@ internal static class TextCleaner
     /// <summary>Longest name or unit shown in a report, in UTF-16 units.</summary>
     public const int Longest = 200;
 
+    // After a word written right to left the mark keeps the numbers behind it in their place.
+    private const char LeftToRightMark = '\u200E';
+
     public static string Visible(string text)
     {
         var kept = new StringBuilder(Math.Min(text.Length, 1024));
@@ -32,6 +35,10 @@ internal static class TextCleaner
     public static string Name(string text)
     {
         string visible = Visible(text).Trim();
-        return visible.Length <= Longest ? visible : visible[..(char.IsHighSurrogate(visible[Longest - 2]) ? Longest - 2 : Longest - 1)] + "…";
+        visible = visible.Length <= Longest ? visible : visible[..(char.IsHighSurrogate(visible[Longest - 2]) ? Longest - 2 : Longest - 1)] + "…";
+        return visible.Any(IsRightToLeft) ? visible + LeftToRightMark : visible;
     }
+
+    // Hebrew, Arabic and their neighbours, with the presentation forms.
+    private static bool IsRightToLeft(char c) => c is (>= '\u0590' and <= '\u08FF') or (>= '\uFB1D' and <= '\uFDFF') or (>= '\uFE70' and <= '\uFEFC');
 }

@@ -41,7 +41,7 @@ internal static class TextReport
                 }
                 else if (block is ReportBlock.Paragraph paragraph)
                 {
-                    Paragraph(text, paragraph.Text, section.Blocks.Count > 1 ? "* " : "");
+                    Paragraph(text, paragraph.Text, section.IsList ? "* " : "");
                 }
             }
         }

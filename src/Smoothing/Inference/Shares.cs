@@ -12,6 +12,9 @@ namespace Smoothing.Inference;
 /// </remarks>
 public static class Shares
 {
+    /// <summary>What the note about values on a limit says.</summary>
+    internal const string TieNote = "equal the limit";
+
     private const string Exact = "Clopper–Pearson";
 
     /// <summary>P(X &gt; <paramref name="limit"/>): values equal to the limit don't count.</summary>
@@ -113,7 +116,7 @@ public static class Shares
 
             if (at > 0)
             {
-                notes.Add(Guard.Text($"{at} of {sample.Count} values equal the limit {limit}: beyond and below count strictly, between counts them."));
+                notes.Add(Guard.Text($"{at} of {sample.Count} values {TieNote} {limit}: beyond and below count strictly, between counts them."));
             }
         }
 

@@ -53,7 +53,7 @@ public class StudyPartsTests
         Assert.Equal(expected.Shifts.Select(s => s.Shift), study.Comparison.Shifts.Select(s => s.Shift));
         Assert.Equal("last quarter", study.Comparison.FirstName);
         string text = study.ToText().Replace('\n', ' ');
-        Assert.Contains("The values differ from last quarter (p at most 0.001): more between", text, StringComparison.Ordinal);
+        Assert.Contains("The values differ from last quarter (p at most 0.001): more from", text, StringComparison.Ordinal);
         Assert.Contains("Compared with last quarter", text, StringComparison.Ordinal);
         Assert.NotNull(study.ToComparisonSvg());
         StudyDocument document = StudyDocument.FromJson(study.ToJson());
