@@ -24,9 +24,12 @@ internal static class DiffusionFixedPointRule
         (double Root, bool Rising) first = crossings.Find(r => r.Rising && r.Root <= bracket);
         int rising = crossings.Count(r => r.Rising && r.Root <= bracket);
         bool open = input.HasLimits && values[^1] < 0 && rising == 0;
+
+        // h² is above γ(h) already where rounding stops the search: the root lies below the floor. Without limits the other candidate decides.
+        bool below = input.HasLimits && rising == 0 && values[0] >= 0 && input.Floor > 0 && input.Smallest <= input.Floor;
         return new RuleOutcome(
             BandwidthRule.DiffusionFixedPoint,
-            rising > 0 ? first.Root : open ? grid[^1] : double.NaN,
+            rising > 0 ? first.Root : open ? grid[^1] : below ? grid[0] : double.NaN,
             rising == 0 ? BandwidthStatus.EndOfSearch : crossings.Count == 1 ? BandwidthStatus.Found : BandwidthStatus.SeveralFound)
         {
             Roots = [.. crossings.Select(r => r.Root)],

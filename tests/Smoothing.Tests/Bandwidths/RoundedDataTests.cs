@@ -2,6 +2,7 @@ using Smoothing.Bandwidths;
 using Smoothing.Kernels;
 using Smoothing.Numerics;
 using Smoothing.Samples;
+using Smoothing.Tests.Samples;
 using Smoothing.Tests.Support;
 
 namespace Smoothing.Tests.Bandwidths;
@@ -125,5 +126,16 @@ public class RoundedDataTests
         Assert.NotNull(choice.Objective);
         int least = choice.Objective.Y.Index().Where(p => choice.Objective.X[p.Index] > choice.Value / 2).MinBy(p => p.Item).Index;
         Assert.InRange(choice.Objective.X[least] / choice.Value, 0.9, 1.1);
+    }
+
+    // On the reflected sample the fixed point is the only candidate: where rounding stops its search, it stops there and is not replaced.
+    [Fact]
+    public void Automatic_RoundedWithALimit_StopsAtTheFloor()
+    {
+        double[] values = [.. SeededColumns.Draw("exponential", 3000, 12).Select(x => Math.Round(2 * x) / 2)];
+        BandwidthChoice choice = BandwidthRules.Automatic(Sample.Of(values), Kernel.Gaussian, new BandwidthOptions { Support = new Smoothing.Numerics.Interval(0, double.PositiveInfinity) });
+        Assert.Equal(BandwidthStatus.RoundingFloor, choice.Status);
+        Assert.Equal(choice.Floor, choice.Value, 1e-12);
+        Assert.Equal(BandwidthRule.DiffusionFixedPoint, choice.ReplacedBy);
     }
 }
