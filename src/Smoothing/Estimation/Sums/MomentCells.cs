@@ -74,7 +74,7 @@ internal sealed unsafe class MomentCells
         }
         else
         {
-            cells.FillSparse(sample);
+            SparseCells.Fill(cells, sample);
         }
 
         return cells;
@@ -161,26 +161,13 @@ internal sealed unsafe class MomentCells
         new Span<double>(_records.Of((long)Count * Moments), Count * Moments).Clear();
     }
 
-    // One record a number, and three empty ones at the end, so that four can always be read.
-    private double* MakeSparse(double[] numbers)
+    /// <summary>Room for one empty record a number, and three more at the end, so that four can always be read.</summary>
+    public double* MakeSparse(double[] numbers)
     {
         Numbers = numbers;
         Count = numbers.Length;
         double* records = _records.Of((long)(Count + 3) * Moments);
         new Span<double>(records, (Count + 3) * Moments).Clear();
         return records;
-    }
-
-    private void FillSparse(Sample sample)
-    {
-        fixed (double* values = sample.SortedValues, weights = sample.SortedWeights)
-        {
-            var numbers = new double[MomentScatter.AddSorted(values, weights, sample.Count, Inverse, null, null)];
-            double* records = MakeSparse(numbers);
-            fixed (double* into = numbers)
-            {
-                MomentScatter.AddSorted(values, weights, sample.Count, Inverse, into, records);
-            }
-        }
     }
 }

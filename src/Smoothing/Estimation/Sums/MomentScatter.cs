@@ -16,8 +16,8 @@ internal static unsafe class MomentScatter
     private const int Block = 8;
     private const int Moments = MomentCells.Moments;
 
-    // A cell with fewer values than this since it was last emptied may wait: 4096·1e-16 is far below the accuracy promised.
-    private const int FullCell = 1 << 12;
+    /// <summary>A cell with fewer values than this since it was last emptied may wait: 4096·1e-16 is far below the accuracy promised.</summary>
+    public const int FullCell = 1 << 12;
 
     // Adding this number rounds to a whole one, which the low 32 bits hold.
     private const double Rounder = 6755399441055744;
@@ -129,8 +129,9 @@ internal static unsafe class MomentScatter
         s0 = s1 = s2 = s3 = default;
     }
 
+    /// <summary>Moves the records of cells that hold more than <paramref name="least"/> from a table to the records.</summary>
     [MethodImpl(MethodImplOptions.AggressiveOptimization)]
-    private static void Empty(double* table, double* records, int cells, double least)
+    public static void Empty(double* table, double* records, int cells, double least)
     {
         for (int c = 0; c < cells; c++)
         {
@@ -147,8 +148,9 @@ internal static unsafe class MomentScatter
         }
     }
 
+    /// <summary>The bulk form for so few values that no cell needs emptying on the way.</summary>
     [MethodImpl(MethodImplOptions.AggressiveOptimization)]
-    private static void AddStretch(double* values, double* weights, int count, double inverse, double first, double* records)
+    public static void AddStretch(double* values, double* weights, int count, double inverse, double first, double* records)
     {
         // Two halves of: eight cell numbers, then b, b², b⁴, b⁸ and the weights of eight values each.
         long* numbers = stackalloc long[2 * Block];

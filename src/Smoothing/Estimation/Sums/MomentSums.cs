@@ -62,6 +62,7 @@ internal sealed unsafe class MomentSums : KernelSums
         {
             double factor = NormalLaw.InverseSqrtTwoPi / _totalWeight / Math.Pow(_bandwidth, order + 1);
             _field.Value.Derivatives(x, order, _parts, factor, destination);
+            GC.KeepAlive(this); // the tables are read through pointers, which keep nothing alive
         }
     }
 
@@ -70,6 +71,7 @@ internal sealed unsafe class MomentSums : KernelSums
         if (x.Length > 0)
         {
             _field.Value.Cumulatives(x, upper, _parts, 1 / _totalWeight, destination);
+            GC.KeepAlive(this);
         }
     }
 
@@ -79,5 +81,7 @@ internal sealed unsafe class MomentSums : KernelSums
         {
             base.Evaluate(x, values, slopes, cumulatives);
         }
+
+        GC.KeepAlive(this);
     }
 }
