@@ -29,16 +29,18 @@ public class GaussianDirectTests
     [InlineData("gap", 0.6, 70)]
     [InlineData("rounded", 0.3, 81)]
     [InlineData("equal", 0.2, 64)]
+    [InlineData("equal", 0.01, 37)]
+    [InlineData("normal", 0.05, 800)] // more sixteens than share a ratio
     public void Derivatives_EqualSteps_HoldTheGaussianGate(string name, double width, int points)
     {
         double[] values = HardSamples.Make(name, 203);
         double from = values.Min() - (8 * width);
         double to = values.Max() + (8 * width);
         double[] x = [.. Enumerable.Range(0, points).Select(j => from + (j * (to - from) / (points - 1)))];
-        Assert.True(GaussianDirect.IsGrid(x, width));
+        Assert.True(GaussianGrid.Serves(x, width));
         Compare(Sample.Of(values), [], width, x, "grid " + name);
         double[] backwards = [.. x.Reverse()];
-        Assert.True(GaussianDirect.IsGrid(backwards, width));
+        Assert.True(GaussianGrid.Serves(backwards, width));
         Compare(Sample.Of(values), [], width, backwards, "backward grid " + name);
         double[] weights = [.. values.Select((_, i) => 1.0 + (i % 7))];
         Compare(Sample.Of(values, new SampleOptions { Weights = weights }), weights, width, x, "weighted grid " + name);
@@ -50,21 +52,36 @@ public class GaussianDirectTests
     {
         double[] values = HardSamples.Make("normal", 51);
         double[] x = [.. Enumerable.Range(0, 160).Select(j => values.Min() - 9 + (0.125 * j))];
-        Assert.True(GaussianDirect.IsGrid(x, 0.25));
+        Assert.True(GaussianGrid.Serves(x, 0.25));
         Compare(Sample.Of(values), [], 0.25, x, "far grid");
     }
 
+    // More values than are held at once, the last lot of every length.
+    [Theory]
+    [InlineData(511)]
+    [InlineData(512)]
+    [InlineData(513)]
+    [InlineData(1026)]
+    [InlineData(1535)]
+    public void Derivatives_EqualStepsAndManyValues_HoldTheGaussianGate(int count)
+    {
+        double[] values = HardSamples.Make("normal", count);
+        double[] x = [.. Enumerable.Range(0, 40).Select(j => -4 + (0.2 * j))];
+        Assert.True(GaussianGrid.Serves(x, 0.5));
+        Compare(Sample.Of(values), [], 0.5, x, $"{count} values");
+    }
+
     [Fact]
-    public void IsGrid_UnequalOrWideSteps_IsFalse()
+    public void Serves_UnequalOrWideSteps_IsFalse()
     {
         double[] x = [.. Enumerable.Range(0, 40).Select(j => j * 0.1)];
-        Assert.True(GaussianDirect.IsGrid(x, 0.5));
-        Assert.False(GaussianDirect.IsGrid(x, 0.1));
+        Assert.True(GaussianGrid.Serves(x, 0.5));
+        Assert.False(GaussianGrid.Serves(x, 0.1));
         x[17] += 1e-9;
-        Assert.False(GaussianDirect.IsGrid(x, 0.5));
+        Assert.False(GaussianGrid.Serves(x, 0.5));
         x[17] = double.NegativeInfinity;
-        Assert.False(GaussianDirect.IsGrid(x, 0.5));
-        Assert.False(GaussianDirect.IsGrid(x.AsSpan(0, 10), 0.5));
+        Assert.False(GaussianGrid.Serves(x, 0.5));
+        Assert.False(GaussianGrid.Serves(x.AsSpan(0, 10), 0.5));
     }
 
     // φ'(u) = −uφ, φ''' = (3u − u³)φ, φ'''' = (u⁴ − 6u² + 3)φ: textbook.

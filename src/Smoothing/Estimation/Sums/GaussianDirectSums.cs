@@ -4,7 +4,7 @@ using Smoothing.Samples;
 
 namespace Smoothing.Estimation;
 
-/// <summary>Kernels φ(u)·q(u²) by the vectorised double loop of <see cref="GaussianDirect"/>: for few values or few pairs.</summary>
+/// <summary>Kernels φ(u)·q(u²) by the vectorised double loops of <see cref="GaussianDirect"/> and <see cref="GaussianGrid"/>: for few values or few pairs.</summary>
 internal sealed unsafe class GaussianDirectSums(Sample sample, Kernel kernel, double bandwidth) : KernelSums
 {
     // Derivatives of the highest order asked for anywhere, and the widest q of the Gaussian-based orders.
@@ -36,9 +36,9 @@ internal sealed unsafe class GaussianDirectSums(Sample sample, Kernel kernel, do
         double factor = NormalLaw.InverseSqrtTwoPi / sample.TotalWeight / Math.Pow(bandwidth, order + 1);
         fixed (double* values = sample.Values, weights = sample.Weights, points = x, target = destination)
         {
-            if (degree == 0 && GaussianDirect.IsGrid(x, bandwidth))
+            if (degree == 0 && GaussianGrid.Serves(x, bandwidth))
             {
-                GaussianDirect.Grid(values, weights, sample.Count, x, bandwidth, factor * q[0], destination);
+                GaussianGrid.Sums(values, weights, sample.Count, x, bandwidth, factor * q[0], destination);
             }
             else
             {
