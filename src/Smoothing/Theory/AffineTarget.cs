@@ -20,6 +20,8 @@ internal sealed class AffineTarget(string name, TargetDensity inner, double shif
     public static string NameOf(TargetDensity inner, double shift, double factor) =>
         shift == 0 ? Guard.Text($"{factor}·({inner.Name})") : factor == 1 ? Guard.Text($"({inner.Name}) + {shift}") : Guard.Text($"{factor}·({inner.Name}) + {shift}");
 
+    internal override TargetDensity Moved(double by, double times) => new AffineTarget(NameOf(this, by, times), inner, (times * shift) + by, times * factor);
+
     internal override bool Knows(int order) => inner.Knows(order);
 
     internal override double ValueCore(double x) => inner.ValueCore(Back(x)) / factor;
@@ -38,7 +40,11 @@ internal sealed class AffineTarget(string name, TargetDensity inner, double shif
         return i < 0 ? 0 : inner.JumpCore(inner.Breaks[i], order) / Math.Pow(factor, order + 1);
     }
 
-    internal override double RoughnessCore(int order) => inner.RoughnessCore(order) / Math.Pow(factor, (2 * order) + 1);
+    internal override double RoughnessCore(int order)
+    {
+        RequireNoJump(order, Guard.Text($"R(f^({order}))")); // in this unit, for the message
+        return inner.RoughnessCore(order) / Math.Pow(factor, (2 * order) + 1);
+    }
 
     private double To(double x) => (factor * x) + shift;
 

@@ -33,15 +33,19 @@ public sealed partial class ErrorTheory
     public IReadOnlyList<double> LocallyOptimalBandwidths(long n) => [.. Some(Minima(Guard.AtLeast(n, 1)), n).Select(Length)];
 
     /// <summary>The h of least MSE at x.</summary>
-    /// <remarks>It exists where the asymptotic one does not, such as at an inflection, f''(x) = 0. Far in a tail it may be one at which E f̂(x) crosses f(x) by accident.</remarks>
+    /// <remarks>
+    /// It exists where the asymptotic one does not, such as at an inflection, f''(x) = 0. In a valley or a tail E f̂(x) crosses f(x) at some large h,
+    /// where nothing of the shape is left but the value at x is right by accident; the global minimum may sit there. <paramref name="largest"/> keeps it out.
+    /// </remarks>
     /// <param name="x">Where, finite.</param>
     /// <param name="n">Number of observations, at least 1.</param>
-    /// <returns>The global minimiser within the range looked at, up to twenty times the spread of the target.</returns>
-    /// <exception cref="ArgumentOutOfRangeException">x is not finite or n is below 1.</exception>
-    /// <exception cref="InvalidOperationException">The MSE has no minimum there, such as far out, where it falls for ever.</exception>
-    public double OptimalBandwidthAt(double x, long n)
+    /// <param name="largest">The largest h allowed, positive; by default twenty times the spread of the target.</param>
+    /// <returns>The global minimiser up to there; <paramref name="largest"/> itself where a given one is best.</returns>
+    /// <exception cref="ArgumentOutOfRangeException">x is not finite, n is below 1 or <paramref name="largest"/> is not positive.</exception>
+    /// <exception cref="InvalidOperationException">None is given and the MSE falls up to the end, such as far out in a tail.</exception>
+    public double OptimalBandwidthAt(double x, long n, double largest = double.PositiveInfinity)
     {
-        (double h, bool falls, double high) = BestAt(X(x), Guard.AtLeast(n, 1));
+        (double h, bool falls, double high) = BestAt(X(x), Guard.AtLeast(n, 1), Cap(largest));
         return !falls ? Length(h) : throw new InvalidOperationException(Guard.Text($"The MSE at {x} has no least value for h up to {Length(high)}: it is lowest at that end, where the curve is all but 0. Use a larger n or a point nearer to the data."));
     }
 
@@ -129,10 +133,12 @@ public sealed partial class ErrorTheory
     private double LeastMise(long n) => Minima(n).Append(Range(n, FarthestOverall).High).Min(h => ExactMise(h, n));
 
     /// <summary>The h of least MSE at x; <c>Falls</c> when the upper end of the range is better than every minimum inside.</summary>
-    private (double H, bool Falls, double High) BestAt(double x, long n)
+    private (double H, bool Falls, double High) BestAt(double x, long n, double largest)
     {
         double g = _target.Derivative(x, DerivativeOrder);
         (double low, double high) = Range(n, Farthest);
+        bool capped = largest < high;
+        (low, high) = (Math.Min(low, largest / 2), Math.Min(high, largest));
         double best = high;
         double least = ExactSquaredError(x, high, n);
         foreach (double h in Scan(
@@ -149,8 +155,11 @@ public sealed partial class ErrorTheory
             (best, least) = error <= least ? (h, error) : (best, least);
         }
 
-        return (best, best == high, high);
+        return (best, best == high && !capped, high);
     }
+
+    private double Cap(double largest) =>
+        double.IsPositiveInfinity(largest) ? largest : H(Guard.Positive(largest, "pass a bandwidth, or nothing"));
 
     /// <summary>From well below the smallest feature's own best h (which falls as n^(−1/2) where the curve jumps, else no faster than n^(−1/5)) to where nothing is left of the shape.</summary>
     private (double Low, double High) Range(long n, double farthest)

@@ -9,16 +9,20 @@ public sealed partial class ErrorTheory
 
     /// <summary>Smallest n whose best h gives √MSE(x) ≤ <paramref name="relativeRootMeanSquaredError"/>·|f⁽ʳ⁾(x)|.</summary>
     /// <remarks>
-    /// Method: the least MSE never grows with n, so halving on its exact value finds the n that is enough while n − 1 is not; h up to twenty spreads
-    /// of the target. Cost: about 2 log₂ n local optima. Silverman (1986), Table 4.2, d = 1 asks for a relative MSE below 0.1 at 0 of N(0, 1): 4.
+    /// Method: the least MSE never grows with n, so halving on its exact value finds the n that is enough while n − 1 is not. Cost: about
+    /// 2 log₂ n local optima. Silverman (1986), Table 4.2, d = 1 asks for a relative MSE below 0.1 at 0 of N(0, 1): 4. In a valley or a tail some
+    /// large h makes the value at x right by accident (see <see cref="OptimalBandwidthAt"/>), and the n found for it is small and of no use for a
+    /// curve: give <paramref name="largestBandwidth"/> there, such as a quarter of the distance between the groups.
     /// </remarks>
     /// <param name="x">Where, finite, in the unit of the values.</param>
     /// <param name="relativeRootMeanSquaredError">Such as 0.1 for ±10 %; positive.</param>
+    /// <param name="largestBandwidth">The largest h allowed, positive; by default twenty times the spread of the target.</param>
     /// <returns>The smallest such n.</returns>
     /// <exception cref="ArgumentOutOfRangeException">An argument is out of range.</exception>
     /// <exception cref="InvalidOperationException">f⁽ʳ⁾(x) is 0, or more than 10¹⁵ observations would be needed.</exception>
-    public long SampleSizeFor(double x, double relativeRootMeanSquaredError)
+    public long SampleSizeFor(double x, double relativeRootMeanSquaredError, double largestBandwidth = double.PositiveInfinity)
     {
+        double largest = Cap(largestBandwidth);
         double at = X(x);
         double wanted = Guard.Positive(relativeRootMeanSquaredError) * _target.Derivative(at, DerivativeOrder);
         if (!(Math.Abs(wanted) > 0))
@@ -26,7 +30,7 @@ public sealed partial class ErrorTheory
             throw new InvalidOperationException(Guard.Text($"A relative error at {x} does not exist: the target is 0 there. Ask at a point where it is not 0."));
         }
 
-        return Smallest(n => ExactSquaredError(at, BestAt(at, n).H, n) <= wanted * wanted);
+        return Smallest(n => ExactSquaredError(at, BestAt(at, n, largest).H, n) <= wanted * wanted);
     }
 
     /// <summary>Smallest n whose best h gives MISE ≤ <paramref name="mise"/>.</summary>

@@ -10,23 +10,32 @@ internal static class TargetSearch
     {
         (double lower, double upper) = target.Support;
         bool openBelow = double.IsInfinity(lower);
-        bool openAbove = double.IsInfinity(upper);
-        double start = !openBelow ? lower : !openAbove ? upper : 0;
-        double step = target.Splits is { Count: > 1 } s ? s[^1] - s[0] : 1;
-        if (openBelow)
+        (double start, double step) = target.Splits is { Count: > 2 } s ? (s[s.Count / 2], s[(s.Count / 2) + 1] - s[(s.Count / 2) - 1]) : (openBelow ? double.IsInfinity(upper) ? 0 : upper - 1 : lower + 1, 1);
+        if (openBelow && !(target.CumulativeCore(start) < p))
         {
-            for (lower = start - step; target.CumulativeCore(lower) > p; step *= 2)
+            (lower, upper) = (start - step, start);
+            for (; target.CumulativeCore(lower) > p; step *= 2)
             {
-                lower = start - step;
+                (lower, upper) = (start - (2 * step), lower);
             }
         }
-
-        if (openAbove)
+        else if (double.IsInfinity(upper) && target.CumulativeCore(start) < p)
         {
-            for (upper = start + step; target.CumulativeCore(upper) < p; step *= 2)
+            (lower, upper) = (start, start + step);
+            for (; target.CumulativeCore(upper) < p; step *= 2)
             {
-                upper = start + step;
+                (lower, upper) = (upper, start + (2 * step));
             }
+
+            openBelow = true; // no end of the support below any more
+        }
+        else if (openBelow)
+        {
+            lower = start;
+        }
+        else if (double.IsInfinity(upper))
+        {
+            upper = start;
         }
 
         // Towards a finite lower end the digits that count are those of the distance from it.

@@ -8,7 +8,7 @@ namespace Smoothing.Tests.Theory;
 /// <summary>Exact errors of random kernels on random mixtures against integrals by the tests' own code.</summary>
 public class ErrorTheoryPropertyTests
 {
-    [Property(MaxTest = 150, Replay = "1992,711")]
+    [Property(MaxTest = 80, Replay = "1992,711")]
     public void BiasAndVariance_RandomCase_AreTheDirectIntegrals(int seed)
     {
         var c = new RandomCase(seed);
