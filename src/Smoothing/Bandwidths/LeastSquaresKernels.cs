@@ -9,7 +9,8 @@ namespace Smoothing.Bandwidths;
 /// Method: Gaussian-based kernels of higher order through the spectrum with their own transform. Kernels on [−1, 1] by sums over all pairs of K and K∗K: in linear time where
 /// K∗K is one polynomial, by the double loop up to 2,000 distinct values elsewhere. What remains (many values with other kernels, limits, derivatives) takes the minimum of
 /// the Gaussian-based kernel of the same order by canonical bandwidths. The criterion of a kernel with an end has kinks where h crosses distances between values, so
-/// minima are found by comparing values, to 1e-9 of h at best.
+/// minima are found by comparing values, to 1e-9 of h at best. Beyond 20,000 distinct values not rounded, minima are looked for with <see cref="CompactLags"/> where that
+/// serves, and settled by the exact sums to 1e-6 of h.
 /// </remarks>
 internal static class LeastSquaresKernels
 {
@@ -19,6 +20,9 @@ internal static class LeastSquaresKernels
     // One exact evaluation takes some ten nanoseconds a value: fewer of them on large samples.
     private const int LargeSample = 20_000;
     private const int FewScanPoints = 33;
+
+    private const int SettlePoints = 5;
+    private const double SettleWidth = 1e-6;
 
     // φ times a polynomial of degree six falls below 1e-12 at 8.9 where φ itself does so at 7.4.
     private const double HigherOrderTails = 1.2;
@@ -40,7 +44,8 @@ internal static class LeastSquaresKernels
         {
             // Weights of this sample are shares; relative weights and their products are all that the sums take.
             var pairs = new CompactPairs(Sample.Of(input.Values, new SampleOptions { Weights = input.Masses }), kernel);
-            return Exact(input, kernel, h => Score(input, kernel, h, pairs.Kernels(h), pairs.SelfConvolutions(h)));
+            double Own(double h) => Score(input, kernel, h, pairs.Kernels(h), pairs.SelfConvolutions(h));
+            return input.Values.Length > LargeSample && input.RoundingUnit == 0 && Scanned(input, kernel, Own) is { } scanned ? scanned : Exact(input, kernel, Own);
         }
 
         if (plain && input.Values.Length <= DirectLimit)
@@ -65,6 +70,30 @@ internal static class LeastSquaresKernels
         double[] grid = RootScan.Grid(input.Smallest * factor, input.Largest * factor, input.Values.Length > LargeSample ? FewScanPoints : ScanPoints);
         double[] minima = [.. RootScan.Minima(score, grid, out _).Select(m => m.At)];
         return LeastSquaresRule.Pick(BandwidthRule.LeastSquaresCrossValidation, input, score, minima, input.Bracket * LeastSquaresRule.Preferred * factor, grid) with { IsExact = true };
+    }
+
+    // Minima from the lag table's scan, each settled by the exact criterion within ±1 % of h: the table's error of 1e-7 of the criterion moves a minimum by far less.
+    private static RuleOutcome? Scanned(SelectionInput input, Kernel kernel, Func<double, double> exact)
+    {
+        double factor = KernelFactors.FromGaussian(kernel, 0), smallest = input.Smallest * factor;
+        if (!CompactLags.Serves(kernel) || CompactLags.Of(Sample.Of(input.Values, new SampleOptions { Weights = input.Masses }), kernel, smallest) is not { } lags)
+        {
+            return null;
+        }
+
+        double Quick(double h) => Score(input, kernel, h, lags.Kernels(h), lags.SelfConvolutions(h));
+        double[] grid = RootScan.Grid(smallest, input.Largest * factor, ScanPoints);
+        double preferred = input.Bracket * LeastSquaresRule.Preferred * factor;
+        double[] rough = [.. RootScan.Minima(Quick, grid, out _).Select(m => m.At)];
+        double[] minima = [.. rough.Select(h => Settle(exact, h))];
+        return LeastSquaresRule.Pick(BandwidthRule.LeastSquaresCrossValidation, input, Quick, minima, preferred, grid) with { IsExact = true };
+    }
+
+    private static double Settle(Func<double, double> exact, double h)
+    {
+        double[] near = RootScan.Grid(0.99 * h, 1.01 * h, SettlePoints);
+        List<(double At, double Value)> found = RootScan.Minima(exact, near, out _, SettleWidth);
+        return found.Count > 0 ? found.MinBy(m => m.Value).At : h;
     }
 
     private static RuleOutcome Spectral(SelectionInput input, Kernel kernel)

@@ -34,8 +34,8 @@ internal static class RootScan
         return found;
     }
 
-    /// <summary>Every interior local minimum that the grid shows, refined until the bracket is 1e-9 wide relative to h.</summary>
-    public static List<(double At, double Value)> Minima(Func<double, double> f, double[] grid, out double[] values)
+    /// <summary>Every interior local minimum that the grid shows, refined until the bracket is <paramref name="width"/> wide relative to h.</summary>
+    public static List<(double At, double Value)> Minima(Func<double, double> f, double[] grid, out double[] values, double width = 1e-9)
     {
         values = Array.ConvertAll(grid, h => f(h));
         var found = new List<(double, double)>();
@@ -43,21 +43,21 @@ internal static class RootScan
         {
             if (values[i] < values[i - 1] && values[i] <= values[i + 1])
             {
-                found.Add(Golden(f, grid[i - 1], grid[i + 1]));
+                found.Add(Golden(f, grid[i - 1], grid[i + 1], width));
             }
         }
 
         return found;
     }
 
-    private static (double At, double Value) Golden(Func<double, double> f, double left, double right)
+    private static (double At, double Value) Golden(Func<double, double> f, double left, double right, double width)
     {
         const double Section = 0.38196601125010515; // (3 − √5)/2
         double a = left, b = right;
         double x = a + (Section * (b - a)), y = b - (Section * (b - a));
         double fx = f(x), fy = f(y);
         // 45 steps shrink by 0.618^45 = 4e-10.
-        for (int i = 0; i < 45 && b - a > 1e-9 * b; i++)
+        for (int i = 0; i < 45 && b - a > width * b; i++)
         {
             if (fx <= fy)
             {

@@ -1,4 +1,5 @@
 using Smoothing.Bandwidths;
+using Smoothing.Estimation;
 using Smoothing.Kernels;
 using Smoothing.Samples;
 using Smoothing.Tests.Samples;
@@ -74,6 +75,20 @@ public class LeastSquaresKernelsTests
             BandwidthChoice choice = BandwidthRules.Automatic(sample, kernel);
             Assert.Equal((BandwidthRule.Automatic, BandwidthRule.BlockSpectrum), (choice.Rule, choice.ReplacedBy!.Value));
             Near.Relative(BandwidthRules.BlockSpectrum(sample, kernel), choice, 1e-12, kernel.Name);
+        }
+    }
+
+    [Fact]
+    public void LeastSquares_LargeSample_ScannedMinimumIsTheExactCriterions()
+    {
+        Sample sample = Sample.Of(SeededColumns.Draw("normal", 21_000, 6));
+        BandwidthChoice choice = BandwidthRules.LeastSquaresCrossValidation(sample, Kernel.Epanechnikov, new BandwidthOptions { RoundingUnit = 0 });
+        var pairs = new CompactPairs(sample, Kernel.Epanechnikov);
+        double best = pairs.LeastSquares(choice);
+        foreach (double factor in (double[])[0.98, 0.995, 1.005, 1.02])
+        {
+            double other = pairs.LeastSquares(choice * factor);
+            Assert.True(other >= best - (1e-9 * Math.Abs(best)), $"{other} at {factor} h is below {best}");
         }
     }
 

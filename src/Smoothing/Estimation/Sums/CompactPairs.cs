@@ -9,6 +9,7 @@ namespace Smoothing.Estimation;
 internal sealed unsafe class CompactPairs(Sample sample, Kernel kernel)
 {
     private double[] _room = [];
+    private double[]? _convolution;
     private CompactBlocks? _blocks;
     private CompactBlocks? _wideBlocks;
 
@@ -78,22 +79,35 @@ internal sealed unsafe class CompactPairs(Sample sample, Kernel kernel)
         return Pairs(Blocks(ref _blocks, bandwidth, degree), polynomial, degree);
     }
 
-    /// <summary>Σ_{j&lt;i} w_i w_j (K∗K)((x_i − x_j)/h); needs <see cref="HasSelfConvolution"/>.</summary>
-    /// <remarks>With t = 2 − |u| and K = Σ p_k sᵏ: (K∗K)(u) = ∫₀ᵗ P(y)P(t − y) dy = Σ p_j p_k j! k!/(j + k + 1)! t^(j+k+1), on a window of 2h in s = t/2.</remarks>
-    public double SelfConvolutions(double bandwidth)
+    /// <summary>Coefficients of K∗K in powers of t = 2 − |u|; needs <see cref="HasSelfConvolution"/>.</summary>
+    /// <remarks>With K = Σ p_k sᵏ: (K∗K)(u) = ∫₀ᵗ P(y)P(t − y) dy = Σ p_j p_k j! k!/(j + k + 1)! t^(j+k+1).</remarks>
+    public static double[] SelfConvolution(Kernel kernel)
     {
-        double* polynomial = stackalloc double[EdgeMoments.MaximumDegree + 1];
         ReadOnlySpan<double> p = kernel.EdgePolynomial;
-        int degree = (2 * p.Length) - 1;
-        new Span<double>(polynomial, EdgeMoments.MaximumDegree + 1).Clear();
+        var polynomial = new double[2 * p.Length];
         for (int j = 0; j < p.Length; j++)
         {
             double beta = 1.0 / (j + 1); // j! k!/(j + k + 1)! at k = 0
             for (int k = 0; k < p.Length; k++)
             {
-                polynomial[j + k + 1] += p[j] * p[k] * beta * Math.ScaleB(1, j + k + 1);
+                polynomial[j + k + 1] += p[j] * p[k] * beta;
                 beta *= (k + 1.0) / (j + k + 2);
             }
+        }
+
+        return polynomial;
+    }
+
+    /// <summary>Σ_{j&lt;i} w_i w_j (K∗K)((x_i − x_j)/h), on a window of 2h in s = t/2; needs <see cref="HasSelfConvolution"/>.</summary>
+    public double SelfConvolutions(double bandwidth)
+    {
+        double* polynomial = stackalloc double[EdgeMoments.MaximumDegree + 1];
+        new Span<double>(polynomial, EdgeMoments.MaximumDegree + 1).Clear();
+        _convolution ??= SelfConvolution(kernel);
+        int degree = _convolution.Length - 1;
+        for (int k = 0; k <= degree; k++)
+        {
+            polynomial[k] = Math.ScaleB(_convolution[k], k);
         }
 
         return Pairs(Blocks(ref _wideBlocks, 2 * bandwidth, degree), polynomial, degree);

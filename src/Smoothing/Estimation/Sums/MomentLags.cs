@@ -15,12 +15,15 @@ namespace Smoothing.Estimation;
 /// </remarks>
 internal sealed unsafe class MomentLags
 {
-    private const int Powers = 8;
+    /// <summary>Powers of the distances that the table holds, 0 included.</summary>
+    public const int Powers = 8;
 
     // e^(−8.7²/2) is 4e-17: pairs further apart can't be seen beside those of one value with itself.
     private const double Reach = 8.7;
     private const int LargestTransform = 1 << 22;
-    private const int Finest = 12;
+
+    /// <summary>Cells in the smallest bandwidth, at least.</summary>
+    public const int Finest = 12;
 
     private readonly double _width;
     private readonly double[] _lags; // D_s[L]/s!, lag by lag in groups of four, power by power
@@ -36,6 +39,15 @@ internal sealed unsafe class MomentLags
 
     /// <summary>Σw², what each value contributes with itself.</summary>
     public double SquaredWeight { get; }
+
+    /// <summary>The cells' width.</summary>
+    public double Width => _width;
+
+    /// <summary>Number of lags, 0 included.</summary>
+    public int Count => _count;
+
+    /// <summary>D_s[L]/s!, lag by lag in groups of four, power by power; for L above 0 every pair once, for lag 0 in both orders and with itself.</summary>
+    public ReadOnlySpan<double> Table => _lags;
 
     /// <summary>The smallest bandwidth that the table serves.</summary>
     public double Smallest { get; }
