@@ -13,6 +13,7 @@ switch (command)
     case "limits": return Smoothing.Benchmarks.Estimation.LimitsBench.Run(args[1..]);
     case "selectors": return Smoothing.Benchmarks.SelectorsBench.Run(args[1..]);
     case "sql": return Smoothing.Benchmarks.Sql.SqlBench.Run(args[1..]);
+    case "theory": return Smoothing.Benchmarks.Theory.TheoryDocument.Run();
     case "kernels": return Smoothing.Benchmarks.Kernels.KernelsDocument.Run();
     default:
         BenchmarkSwitcher.FromAssembly(typeof(Program).Assembly).Run(args);

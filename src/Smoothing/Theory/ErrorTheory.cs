@@ -10,7 +10,7 @@ namespace Smoothing.Theory;
 /// of the kernel, μ_k its k-th moment, r the derivative that is estimated, R(a) = ∫a². x and h are in the unit of the target's values; errors
 /// of the curve in that unit to the power −(r + 1), integrated squared errors to the power −(2r + 1).</para>
 /// <para>Exact values. Gaussian and Gaussian-based kernels on normal mixtures: closed forms, relative error about 1e-13 for bias and
-/// integrated squared bias at every h (Fryer 1976; Marron &amp; Wand 1992), 1 to 5 microseconds for the 15-component mixtures. Other kernels on
+/// integrated squared bias at every h (Fryer 1976; Marron &amp; Wand 1992), 0.5 to 8 microseconds for a 15-component mixture. Other kernels on
 /// normal mixtures: one integral for each pair of components, 1e-10. Every other target: quadrature, 1e-10 where its derivatives are known;
 /// where they are not, bias as h → 0 keeps only about 1e-14 of f. Variances lose digits where h is so large that f̂ hardly scatters: about 1e-15 of E f̂² absolute.</para>
 /// <para>Lengths are taken in a power of two near the target's spread where that is below 1e-6 or above 1e6, so that results are the same in
