@@ -11,9 +11,9 @@ namespace Smoothing.Estimation;
 /// </remarks>
 internal sealed class BoundaryForm : CurveForm
 {
-    // Kinks of the curve become panel edges up to this many; beyond, kinks are so many and so small that panels a sixty-fourth of h wide
-    // average them: the error of F then falls like the inverse square root of their number.
-    private const int MostKinks = 20_000;
+    // Kinks of the curve become panel edges up to this many: about half a second once. Beyond, kinks are so many and so small that panels a
+    // sixty-fourth of h wide average them: the error of F then falls like the inverse square root of their number.
+    private const int MostKinks = 1_000_000;
     private const double PanelRefinement = 8;
 
     private readonly KernelSums _sums;
@@ -90,7 +90,7 @@ internal sealed class BoundaryForm : CurveForm
         if (kernel.Order > 2)
         {
             throw new ArgumentException(
-                Guard.Text($"Boundary = {correction} needs a kernel of order 2, but the {kernel.Name} kernel is of order {kernel.Order}: use BoundaryCorrection.Renormalised or Reflection, or a kernel of order 2."));
+                Guard.Text($"Boundary = {correction} fits a line, and away from limits needs ∫ u²K above 0, which is 0 for the {kernel.Name} kernel of order {kernel.Order}: use BoundaryCorrection.Renormalised or Reflection, or a kernel of order 2."));
         }
 
         if (!hasFirst)

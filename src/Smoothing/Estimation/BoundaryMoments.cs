@@ -53,7 +53,7 @@ internal sealed class BoundaryMoments
         var series = new double[order + 1];
         series[0] = p + q <= ShortSupport
             ? Quadratured(l, p, q)
-            : (p >= Reach ? _kernel.Moment(l) : Incomplete(_kernel, l, p)) - (q >= Reach ? 0 : Incomplete(_kernel, l, -q));
+            : (p >= Reach ? _kernel.Moment(l) : _kernel.IncompleteMoment(l, p)) - (q >= Reach ? 0 : _kernel.IncompleteMoment(l, -q));
         double scale = 1;
         for (int j = 1; j <= order; j++)
         {
@@ -77,80 +77,6 @@ internal sealed class BoundaryMoments
             double weight = factor * Math.Pow(u, l - i);
             sum += weight == 0 ? 0 : weight * (m == i ? kernel.ValueCore(u) : kernel.DerivativeCore(u, m - i));
             factor *= (double)(l - i) * (m - i) / (i + 1);
-        }
-
-        return sum;
-    }
-
-    /// <summary>∫ uˡ K up to <paramref name="u"/>: in closed form for the Gaussian, the exponential and polynomials on [−1, 1], the kernel's own otherwise.</summary>
-    public static double Incomplete(Kernel kernel, int l, double u)
-    {
-        if (u > 0)
-        {
-            return kernel.Moment(l) - ((l % 2 == 0 ? 1 : -1) * Incomplete(kernel, l, -u));
-        }
-
-        if (l == 0)
-        {
-            return kernel.CumulativeCore(u);
-        }
-
-        if (ReferenceEquals(kernel, Kernel.Gaussian))
-        {
-            double phi = NormalLaw.Density(u);
-            return l == 1 ? -phi : NormalLaw.Cumulative(u) - (u * phi);
-        }
-
-        if (kernel.ExponentialRate > 0)
-        {
-            // ½ ∫ v^l e^v up to u, in units of 1/λ.
-            double v = kernel.ExponentialRate * u;
-            return Math.Exp(v) / 2 * (l == 1 ? v - 1 : (v * v) - (2 * v) + 2) / Math.Pow(kernel.ExponentialRate, l);
-        }
-
-        return kernel.EdgePolynomial.IsEmpty ? (u <= -kernel.SupportRadius ? 0 : kernel.IncompleteMomentCore(l, u)) : OfPolynomial(kernel.EdgePolynomial, l, u);
-    }
-
-    /// <summary>The same by quadrature, u ≤ 0: every kernel is smooth on the negative half of its support.</summary>
-    public static double ByQuadrature(Kernel kernel, int l, double u)
-    {
-        // ∫ v^l K = u^l C − l ∫ v^{l−1} C with C the distribution function: a sum over panels no wider than the kernel's own unit, an eighth of it
-        // where K ends; the stretch left out has a share of C below 1e-17.
-        double from = double.IsFinite(kernel.SupportRadius) ? -kernel.SupportRadius : u - ReachOf(kernel);
-        if (u <= from)
-        {
-            return 0;
-        }
-
-        double widest = double.IsFinite(kernel.SupportRadius) ? kernel.SupportRadius * GaussRule.ShortStretch : 1;
-        int panels = (int)Math.Ceiling((u - from) / widest);
-        double width = (u - from) / panels;
-        Span<double> x = stackalloc double[GaussRule.Nodes];
-        Span<double> y = stackalloc double[GaussRule.Nodes];
-        double integral = 0;
-        for (int k = 0; k < panels; k++)
-        {
-            GaussRule.Place(from + (k * width), from + ((k + 1) * width), x);
-            for (int i = 0; i < x.Length; i++)
-            {
-                y[i] = (l == 1 ? 1 : x[i]) * kernel.CumulativeCore(x[i]);
-            }
-
-            integral += GaussRule.Sum(y, width);
-        }
-
-        return (Math.Pow(u, l) * kernel.CumulativeCore(u)) - (l * integral);
-    }
-
-    // With s = 1 + u: ∫ (σ − 1)ˡ P(σ) dσ over [0, s], term by term.
-    private static double OfPolynomial(ReadOnlySpan<double> polynomial, int l, double u)
-    {
-        double s = 1 + u;
-        double sum = 0;
-        for (int i = 0; s > 0 && i < polynomial.Length; i++)
-        {
-            double power = Math.Pow(s, i + 1);
-            sum += polynomial[i] * power * (l == 1 ? (s / (i + 2)) - (1.0 / (i + 1)) : (s * s / (i + 3)) - (2 * s / (i + 2)) + (1.0 / (i + 1)));
         }
 
         return sum;
