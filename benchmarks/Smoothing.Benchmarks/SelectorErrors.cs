@@ -1,3 +1,4 @@
+using System.Numerics.Tensors;
 using Smoothing.Estimation;
 using Smoothing.Numerics;
 
@@ -57,7 +58,7 @@ internal sealed class SelectorTruth
 
     public double SquaredIntegral { get; }
 
-    public SelectorErrors For(ReadOnlySpan<double> sorted, double total) => new(this, sorted, total, _real, _imaginary);
+    public SelectorErrors For(ReadOnlySpan<double> sorted, ReadOnlySpan<double> weights, double count) => new(this, sorted, weights, count, _real, _imaginary);
 }
 
 /// <inheritdoc cref="SelectorTruth"/>
@@ -67,30 +68,32 @@ internal sealed class SelectorErrors
     private readonly EmpiricalSpectrum _spectrum;
     private readonly double[] _cross;
 
-    public SelectorErrors(SelectorTruth truth, ReadOnlySpan<double> sorted, double total, double[] real, double[] imaginary)
+    public SelectorErrors(SelectorTruth truth, ReadOnlySpan<double> sorted, ReadOnlySpan<double> weights, double count, double[] real, double[] imaginary)
     {
+        double total = weights.IsEmpty ? sorted.Length : TensorPrimitives.Sum(weights);
         _truth = truth;
         var values = new List<double>();
         var masses = new List<double>();
-        foreach (double x in sorted)
+        for (int i = 0; i < sorted.Length; i++)
         {
+            double x = sorted[i], mass = (weights.IsEmpty ? 1 : weights[i]) / total;
             if (x >= truth.Target.Lower && x < truth.Target.Upper)
             {
                 if (values.Count > 0 && values[^1] == x)
                 {
-                    masses[^1] += 1 / total;
+                    masses[^1] += mass;
                 }
                 else
                 {
                     values.Add(x);
-                    masses.Add(1 / total);
+                    masses.Add(mass);
                 }
             }
         }
 
         // A quarter of the nodes are kept as frequencies; finer bandwidths than they reach are none of the rules' business here.
         double smallest = EmpiricalSpectrum.GaussianReach * truth.Length / (Math.PI / 2 * SelectorTruth.Nodes) * 1.01;
-        _spectrum = EmpiricalSpectrum.OnCircle([.. values], [.. masses], total, truth.Target.Lower, truth.Length, smallest);
+        _spectrum = EmpiricalSpectrum.OnCircle([.. values], [.. masses], count, truth.Target.Lower, truth.Length, smallest);
         _cross = new double[_spectrum.Count];
         for (int k = 0; k < _cross.Length; k++)
         {

@@ -16,7 +16,13 @@ internal sealed record SelectorTarget(string Set, string Name, SelectorDraw Draw
 
     /// <summary>Share of the values that are rounded.</summary>
     public double RoundedShare { get; init; } = 1;
+
+    /// <summary>Weight of a drawn value; null for a sample without weights.</summary>
+    public SelectorWeight? Weight { get; init; }
 }
 
 /// <summary>Draws one value from a stream.</summary>
 internal delegate double SelectorDraw(ref RandomStream stream);
+
+/// <summary>The weight of one drawn value.</summary>
+internal delegate double SelectorWeight(double value, ref RandomStream stream);

@@ -2,10 +2,10 @@ using Smoothing.Numerics;
 
 namespace Smoothing.Benchmarks;
 
-/// <summary>The laws of the selector table: fifteen normal mixtures, skewed, heavy and flat ones, and rounded data.</summary>
+/// <summary>The laws of the selector table: fifteen normal mixtures, skewed, heavy and flat ones, rounded data and weighted ones.</summary>
 internal static class SelectorTargets
 {
-    public static IReadOnlyList<SelectorTarget> All() => [.. Mixtures(), .. Others(), .. Rounded()];
+    public static IReadOnlyList<SelectorTarget> All() => [.. Mixtures(), .. Others(), .. Rounded(), .. Weighted()];
 
     /// <summary>Marron &amp; Wand (1992), Table 1.</summary>
     private static IEnumerable<SelectorTarget> Mixtures()
@@ -105,6 +105,26 @@ internal static class SelectorTargets
         yield return Mixture("rounded", "MW06 to 0.25", [0.5, 0.5], [-1, 1], [2.0 / 3, 2.0 / 3], 0.25);
         yield return Mixture("rounded", "normal 60% to 0.5", [1], [0], [1], 0.5, 0.6);
         yield return Mixture("rounded", "normal 30% to 0.25", [1], [0], [1], 0.25, 0.3);
+    }
+
+    /// <summary>Lognormal weights of a coefficient of variation; then weights e^(bx) on values drawn from the law tilted by e^(−bx), as surveys have them.</summary>
+    private static IEnumerable<SelectorTarget> Weighted()
+    {
+        (double[] w, double[] m, double[] s) = Parameters(6);
+        foreach (double variation in new[] { 0.5, 1.0, 2.0 })
+        {
+            double sigma = Math.Sqrt(Math.Log(1 + (variation * variation)));
+            double Noise(double value, ref RandomStream stream) => Math.Exp(sigma * stream.NextNormal());
+            yield return Mixture("weighted", FormattableString.Invariant($"normal, cv {variation}"), [1], [0], [1]) with { Weight = Noise };
+            yield return Mixture("weighted", FormattableString.Invariant($"MW06, cv {variation}"), w, m, s) with { Weight = Noise };
+        }
+
+        foreach (double tilt in new[] { 0.5, 1.0 })
+        {
+            // A normal law tilted by e^(−bx) is the same one, moved by −b.
+            SelectorTarget law = Mixture("weighted", FormattableString.Invariant($"normal, weight exp({tilt} x)"), [1], [0], [1]);
+            yield return law with { DrawOne = (ref s) => s.NextNormal() - tilt, Weight = (double x, ref RandomStream _) => Math.Exp(tilt * x) };
+        }
     }
 
     private static double DrawT3(ref RandomStream s)

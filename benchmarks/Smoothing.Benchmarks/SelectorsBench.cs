@@ -6,11 +6,13 @@ using Smoothing.Samples;
 
 namespace Smoothing.Benchmarks;
 
-/// <summary>All rules over known laws: <c>-- selectors [samples=100] [threads=1] [sizes=100,1000,10000] [seed=1] [set=…] [csv=file]</c>.</summary>
+/// <summary>All rules over known laws: <c>-- selectors [samples=100] [threads=1] [sizes=100,1000,10000] [seed=1] [set=…] [csv=file]</c>; <c>-- selectors page</c> writes the committed file's tables into docs/bandwidths.md.</summary>
 internal static class SelectorsBench
 {
     private const string Sharp = "Sharp";
     private const string Fourth = "BlockSpectrum order 4";
+
+    private const string Header = "set,density,rule,n,samples,mean_ise,mean_oracle_ise,ratio_of_means,mean_of_ratios,worst_ratio,not_found";
 
     private sealed class Tally
     {
@@ -21,6 +23,11 @@ internal static class SelectorsBench
 
     public static int Run(string[] args)
     {
+        if (args.Length > 0 && args[0] == "page")
+        {
+            return SelectorsPage.Run();
+        }
+
         string Option(string name, string fallback) => args.FirstOrDefault(a => a.StartsWith(name + "=", StringComparison.Ordinal))?[(name.Length + 1)..] ?? fallback;
         int samples = int.Parse(Option("samples", "100"), CultureInfo.InvariantCulture);
         int threads = int.Parse(Option("threads", "1"), CultureInfo.InvariantCulture);
@@ -47,7 +54,7 @@ internal static class SelectorsBench
         string csv = Option("csv", "");
         if (csv.Length > 0)
         {
-            File.WriteAllLines(csv, ["set,density,rule,n,samples,mean_ise,mean_oracle_ise,ratio_of_means,mean_of_ratios,worst_ratio,not_found", .. rows.SelectMany(r => r)]);
+            File.WriteAllLines(csv, [Header, .. rows.SelectMany(r => r)]);
         }
 
         Print(targets, sizes, tallies);
@@ -77,10 +84,20 @@ internal static class SelectorsBench
                 }
             }
 
-            Sample sample = Sample.Of(x);
-            SelectorErrors errors = truth.For(sample.SortedValues, n);
+            double[] weights = [];
+            if (target.Weight is { } weigh)
+            {
+                weights = new double[n];
+                for (int i = 0; i < n; i++)
+                {
+                    weights[i] = weigh(x[i], ref stream);
+                }
+            }
+
+            Sample sample = Sample.Of(x, new SampleOptions { Weights = weights });
+            SelectorErrors errors = truth.For(sample.SortedValues, sample.SortedWeights, sample.EffectiveCount);
             double quartiles = exact[3 * n / 4] - exact[n / 4];
-            double oracle = (target.Step > 0 ? truth.For(exact, n) : errors).Oracle(0.006 * quartiles, 1.5 * quartiles);
+            double oracle = (target.Step > 0 ? truth.For(exact, [], n) : errors).Oracle(0.006 * quartiles, 1.5 * quartiles);
             Try(tallies, sample, errors, oracle, likelihood: r < Math.Max(1, samples / 5));
         }
 
