@@ -70,7 +70,7 @@ internal static class DifferenceContent
         double[] high = [.. band.Upper.Select(y => 100 * y)];
         double bottom = Math.Min(low.Min(), 0);
         double top = Math.Max(high.Max(), 0);
-        double margin = 0.14 * (top - bottom);
+        double margin = 0.3 * (top - bottom);
         List<Mark> marks = [];
         var labels = new List<Label>();
         foreach ((IReadOnlyList<Interval> stretches, Tone tone, string share) in new[] { (band.Higher, Tone.Up, "more"), (band.Lesser, Tone.Down, "fewer") })

@@ -37,14 +37,13 @@ internal static class DistributionContent
             keys.Add(new Key(Check.Text($"limit with {Words.Level(study.Options.Level)} interval"), Tone.Limit, Swatch.Point, Shape: Shape.Diamond));
         }
 
-        foreach (QuantileEstimate quantile in study.Quantiles.Where(q => view.Range.Contains(q.Estimate)).OrderByDescending(q => q.Probability))
+        foreach (QuantileEstimate quantile in study.Quantiles.Where(q => view.Range.Contains(q.Estimate)))
         {
             double height = 100 * quantile.Probability;
             double from = Math.Max(quantile.Interval.Lower, view.Range.Lower);
             double to = Math.Min(quantile.Interval.Upper, view.Range.Upper);
             marks.Add(LineMark.Straight(from, height, to, height, Tone.Second, 3.5f));
             marks.Add(new PointMark(quantile.Estimate, height, Tone.Second, Shape.Disc, 8));
-            labels.Add(new Label(Quantile(view, quantile), to, height, Standing.Beside));
         }
 
         if (study.Quantiles.Count > 0)
@@ -58,7 +57,7 @@ internal static class DistributionContent
             Alternative = Alternative(view),
             Keys = keys,
             Panels = [new Panel { X = view.Axis, Y = AxisScale.Marked(-2, 113, [.. Enumerable.Range(0, 6).Select(i => (20.0 * i, Check.Text($"{20 * i}")))]), XCaption = view.Caption, YCaption = "% of the values up to here", Marks = marks, Labels = labels }],
-            Notes = [view.Method, .. view.FarLimits, .. study.Quantiles.Where(q => double.IsInfinity(q.Interval.Length)).Select(q => Check.Text($"{100 * q.Probability:0.###} %: {Words.Count(study.Sample.Count)} values set no {(double.IsPositiveInfinity(q.Interval.Upper) ? "upper" : "lower")} limit to it."))],
+            Notes = [view.Method + (study.Quantiles.Count > 0 ? " " + Words.Sentence(string.Join("; ", study.Quantiles.Select(q => Quantile(view, q)))) + "." : ""), .. view.FarLimits, .. study.Quantiles.Where(q => double.IsInfinity(q.Interval.Length)).Select(q => Check.Text($"{100 * q.Probability:0.###} %: {Words.Count(study.Sample.Count)} values set no {(double.IsPositiveInfinity(q.Interval.Upper) ? "upper" : "lower")} limit to it."))],
         };
     }
 
@@ -136,7 +135,8 @@ internal static class DistributionContent
     private static string Quantile(StudyView view, QuantileEstimate quantile)
     {
         double error = double.IsFinite(quantile.Interval.Length) ? quantile.Interval.Length / 2 : view.Study.Bandwidth;
-        return Check.Text($"{100 * quantile.Probability:0.###} % up to {Words.WithUnit(Words.Rounded(quantile.Estimate, error), view.Unit)}");
+        string Edge(double end) => double.IsInfinity(end) ? "no limit" : Words.Rounded(end, error);
+        return Check.Text($"{100 * quantile.Probability:0.###} % up to {Words.WithUnit(Words.Rounded(quantile.Estimate, error), view.Unit)} ({Edge(quantile.Interval.Lower)} to {Edge(quantile.Interval.Upper)})");
     }
 
     private static string Alternative(StudyView view)

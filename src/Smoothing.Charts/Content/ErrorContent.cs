@@ -69,14 +69,14 @@ internal static class ErrorContent
             new LineMark(h, sum, Tone.Curve, 2.8f, KeepClear: true),
             new PointMark(best, 1, Tone.Curve, Shape.Disc, 9),
         ];
-        List<Label> labels = [new(Check.Text($"smallest at {Words.WithUnit(Words.Three(best), unit)}"), best, 1, Standing.Above)];
+        List<Label> labels = [];
         string alternative = Check.Text($"The error is smallest at h = {Words.WithUnit(Words.Three(best), unit)}.");
         if (chosen is { } mine)
         {
             (double bias, double variance) = Error(mine);
             string times = Check.Text($"{Words.Three((bias + variance) / smallest)} times the smallest error");
             marks.Add(LineMark.Straight(mine, 0, mine, Ceiling, Tone.Limit, 2, Dash.Long, keepClear: true));
-            labels.Insert(0, new Label(Check.Text($"chosen: h = {Words.WithUnit(Words.Three(mine), unit)}, {times}"), mine, Ceiling, Standing.Top, Tone.Limit));
+            labels.Add(new Label(Check.Text($"chosen h = {Words.WithUnit(Words.Three(mine), unit)}"), mine, Ceiling, Standing.Top, Tone.Limit));
             alternative += Check.Text($" The chosen h = {Words.WithUnit(Words.Three(mine), unit)} has {times}, {100 * bias / (bias + variance):F0} % of it squared bias.");
         }
 
@@ -89,6 +89,7 @@ internal static class ErrorContent
                 new Key("mean squared error", Tone.Curve, Swatch.Line, Width: 2.8f),
                 new Key("squared bias", Tone.Second, Swatch.Line, Dash.Long),
                 new Key("variance", Tone.Third, Swatch.Line, Dash.Short),
+                new Key(Check.Text($"smallest at h = {Words.WithUnit(Words.Three(best), unit)}"), Tone.Curve, Swatch.Point),
             ],
             Panels =
             [
@@ -102,7 +103,7 @@ internal static class ErrorContent
                     Labels = labels,
                 },
             ],
-            Notes = [about],
+            Notes = [alternative + " " + about],
         };
     }
 

@@ -41,7 +41,7 @@ internal sealed class StudyView
     /// <summary>Its highest value.</summary>
     public double Top { get; }
 
-    /// <summary>The stretch of the axis: the study's picture, and limits not far from it.</summary>
+    /// <summary>The stretch of the axis: the study's picture, and limits and single values with a share of their own not far from it.</summary>
     public Interval Range { get; }
 
     public string Unit => Study.Unit;
@@ -69,8 +69,11 @@ internal sealed class StudyView
     public string Beyond(LimitAnswer answer) =>
         Check.Text($"above {Words.WithUnit(Words.AsGiven(answer.Limit), Unit)}: {Words.Percent(answer.Beyond)} ({Words.PercentRange(answer.Beyond)})");
 
-    /// <summary>Notes for the limits that lie outside the picture.</summary>
-    public IEnumerable<string> FarLimits => Study.Limits.Where(l => !Range.Contains(l.Limit))
+    /// <summary>Notes for limits, and for single values with a share of their own, that lie outside the picture.</summary>
+    public IEnumerable<string> FarLimits => Study.Atoms.Where(a => !Range.Contains(a.Value))
+        .Select(a => Check.Text($"{100 * a.Share:F0} % of the values are exactly {Words.WithUnit(Words.AsGiven(a.Value), Unit)}, outside the picture.")).Concat(FarLimitsAlone);
+
+    private IEnumerable<string> FarLimitsAlone => Study.Limits.Where(l => !Range.Contains(l.Limit))
         .Select(l => Check.Text($"The limit {Words.WithUnit(Words.AsGiven(l.Limit), Unit)} lies {(l.Limit > Range.Upper ? "right" : "left")} of the picture; {Beyond(l)}."));
 
     /// <summary>The axis of the values.</summary>
@@ -112,7 +115,7 @@ internal sealed class StudyView
         double reach = Reach * picture.Length;
         double low = picture.Lower;
         double high = picture.Upper;
-        foreach (double limit in study.Limits.Select(l => l.Limit))
+        foreach (double limit in study.Limits.Select(l => l.Limit).Concat(study.Atoms.Select(a => a.Value)))
         {
             if (limit < picture.Lower && limit >= picture.Lower - reach)
             {
