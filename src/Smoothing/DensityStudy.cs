@@ -29,7 +29,7 @@ public sealed partial class DensityStudy
         CurveShare = 1 - Atoms.Sum(a => a.Share);
         Bandwidth = StudySteps.Choose(CurveSample, options);
         Density = Density.Of(CurveSample, options.Kernel, Bandwidth, new DensityOptions { Support = options.Support, Boundary = options.Boundary });
-        Picture = StudySteps.PictureRange(CurveSample, Bandwidth, options);
+        Picture = StudySteps.WithAtoms(StudySteps.PictureRange(CurveSample, Bandwidth, options), Atoms, options);
         options.Cancellation.ThrowIfCancellationRequested();
         _progress.Report(StudyProgress.Part.Curve, 0.4);
         Uncertainty = StudySteps.Trust(Density, Bandwidth, options);

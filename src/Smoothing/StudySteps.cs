@@ -108,6 +108,21 @@ internal static class StudySteps
         return low < high ? new Interval(low, high) : new Interval(Math.BitDecrement(low), Math.BitIncrement(high));
     }
 
+    /// <summary>The picture made wide enough for the point masses, each with a little room beside it, as long as that does not more than double it.</summary>
+    public static Interval WithAtoms(Interval picture, IReadOnlyList<Atom> atoms, StudyOptions options)
+    {
+        double low = picture.Lower;
+        double high = picture.Upper;
+        double room = 0.02 * picture.Length;
+        foreach (Atom atom in atoms.Where(a => a.Value > picture.Lower - picture.Length && a.Value < picture.Upper + picture.Length))
+        {
+            low = Math.Min(low, atom.Value - room);
+            high = Math.Max(high, atom.Value + room);
+        }
+
+        return options.Support is { } support ? new Interval(Math.Max(low, support.Lower), Math.Min(high, support.Upper)) : new Interval(low, high);
+    }
+
     public static double[] Grid(Interval range, int points)
     {
         var x = new double[points];

@@ -53,7 +53,7 @@ internal static class SvgFigure
 
     private static void Axes(StringBuilder svg, FigureModel figure, SvgLayout layout)
     {
-        (double[] xs, int xDecimals) = AxisTicks.Fitting(layout.From, layout.To, layout.Right - layout.Left, SvgLayout.Character);
+        (double[] xs, int xDecimals) = AxisTicks.Fitting(layout.From, layout.To, layout.Right - layout.Left, SvgText.Character);
         (double[] ys, int yDecimals) = AxisTicks.Between(0, layout.PercentTop, layout.Height < 380 ? 4 : 5);
         svg.Append("<path class=\"sm-g\" d=\"");
         foreach (double tick in ys)
@@ -71,7 +71,7 @@ internal static class SvgFigure
         foreach (double tick in xs)
         {
             string label = AxisTicks.Label(tick, xDecimals);
-            double half = label.Length * SvgLayout.Character / 2;
+            double half = SvgText.Width(label) / 2;
             Label(svg, Math.Clamp(layout.X(tick), half, Math.Max(half, layout.Width - half)), layout.Floor + 19, "middle", label);
         }
 
@@ -82,7 +82,7 @@ internal static class SvgFigure
 
         Label(svg, 8, 16, "start", layout.YTitle);
         string title = figure.Unit.Length > 0 ? (figure.Name.Length > 0 ? figure.Name + ", " : "") + figure.Unit : figure.Name;
-        Label(svg, layout.Width / 2, layout.Height - 10, "middle", SvgLayout.Short(title, (int)((layout.Width - 16) / SvgLayout.Character)));
+        Label(svg, layout.Width / 2, layout.Height - 10, "middle", SvgText.Fit(title, layout.Width - 16));
     }
 
     private static void Band(StringBuilder svg, FigureModel figure, SvgLayout layout)
@@ -150,8 +150,8 @@ internal static class SvgFigure
             double px = layout.X(x);
             double py = layout.Y(y);
             svg.Append("<path class=\"sm-p\" d=\"M").Append(N(px - 5)).Append(' ').Append(N(py - 11)).Append("h10l-5 8z\"/>");
-            string words = SvgLayout.Short(label, 24);
-            double half = words.Length * SvgLayout.Character / 2;
+            string words = SvgText.Fit(label, 180);
+            double half = SvgText.Width(words) / 2;
             double at = Math.Clamp(px, layout.Left + half, Math.Max(layout.Left + half, layout.Right - half));
             if (!taken.Any(t => Math.Abs(t.Y - py) < 17 && t.Left < at + half && t.Right > at - half))
             {

@@ -3,11 +3,7 @@ namespace Smoothing;
 /// <summary>Where the parts of a picture stand: axes, rows of labels above the curve, legend. Labels are given rows of their own, so that none lies on the curve or is cut.</summary>
 internal sealed class SvgLayout
 {
-    /// <summary>Width of a sign of the 13-unit font, on the wide side so that nothing is cut with another font.</summary>
-    public const double Character = 7.4;
-
     private const double Row = 18;
-    private const int MostRows = 6;
     private const double MostOverPeak = 3;
 
     public SvgLayout(FigureModel figure, double width, double height)
@@ -29,7 +25,8 @@ internal sealed class SvgLayout
         PerUnit = Unit(highest);
         YTitle = Title(figure);
         Legend = PlaceLegend(figure);
-        Marks = PlaceMarks(figure);
+        (Marks, int rows) = SvgMarks.Place(figure, this, Top);
+        Top += SvgMarks.Row * rows;
 
         // A peak's mark and label need 32 units above the peak.
         double room = figure.Peaks.Count > 0 ? (Floor - Top) / Math.Max(1, Floor - Top - 32) : 1.04;
@@ -76,12 +73,6 @@ internal sealed class SvgLayout
 
     public double YOfPercent(double percent) => Floor - (percent / PercentTop * (Floor - Top));
 
-    public static string Short(string text, int most)
-    {
-        most = Math.Max(2, most);
-        return text.Length <= most ? text : text[..(char.IsHighSurrogate(text[most - 2]) ? most - 2 : most - 1)] + "…";
-    }
-
     private static double Unit(double highest)
     {
         double percent = 100 * highest;
@@ -92,7 +83,7 @@ internal sealed class SvgLayout
     {
         string per = PerUnit == 1 ? "" : (PerUnit is >= 1 and < 1e15 ? StudyNumbers.Count(PerUnit) : StudyNumbers.AsGiven(PerUnit)) + " ";
         string unit = figure.Unit.Length > 0 ? figure.Unit : PerUnit == 1 ? "unit" : "units";
-        return Short("% of the values per " + per + unit, (int)((Width - 16) / Character));
+        return SvgText.Fit("% of the values per " + per + unit, Width - 16);
     }
 
     private List<(double X, double Y, string Sample, string Words)> PlaceLegend(FigureModel figure)
@@ -110,7 +101,7 @@ internal sealed class SvgLayout
 
         if (figure.Second.Count > 0)
         {
-            parts.Add(("<line class=\"sm-s\" x1=\"0\" x2=\"22\" y1=\"-4\" y2=\"-4\"/>", Short(figure.SecondWords, 30)));
+            parts.Add(("<line class=\"sm-s\" x1=\"0\" x2=\"22\" y1=\"-4\" y2=\"-4\"/>", SvgText.Fit(figure.SecondWords, 200)));
         }
 
         if (figure.Different.Any(d => d.FirstHigher))
@@ -124,9 +115,9 @@ internal sealed class SvgLayout
         }
 
         // Beside the title of the vertical axis where there is room, else in rows below it.
-        double Length((string Sample, string Words) part) => 42 + (Character * part.Words.Length);
+        double Length((string Sample, string Words) part) => 40 + SvgText.Width(part.Words);
         double y = 16;
-        double start = 8 + (Character * YTitle.Length) + 20;
+        double start = 8 + SvgText.Width(YTitle) + 20;
         if (start + parts.Sum(Length) > Width)
         {
             (y, start) = (y + Row, 8);
@@ -152,42 +143,4 @@ internal sealed class SvgLayout
         Top = y + 14;
         return placed;
     }
-
-    // Left to right, each label in the first row where it meets no other label and no line, and its own line meets none; a line that finds no row has no label.
-    private List<SvgMark> PlaceMarks(FigureModel figure)
-    {
-        var placed = new List<(int Row, double X, double Left, double Right)>();
-        var marks = new List<(SvgMark Mark, int Row)>();
-        int rows = 0;
-        IEnumerable<(double X, string Label, bool IsAtom)> all = figure.Limits.Select(l => (l.X, l.Label, false)).Concat(figure.Atoms.Select(a => (a.X, a.Label, true)));
-        foreach ((double at, string label, bool isAtom) in all.Where(m => m.X >= From && m.X <= To).OrderBy(m => m.X))
-        {
-            double x = X(at);
-            string words = Short(label, (int)((Width - 40) / Character / 1.1));
-            double length = (words.Length * Character * 1.06) + 12;
-            double start = x + length <= Width ? x : x - length >= 0 ? x - length : Math.Max(0, Width - length);
-            double end = start + length;
-            int row = 0;
-            while (row < MostRows && placed.Any(p => row == p.Row ? p.Left <= end && p.Right >= start : row > p.Row ? p.X > start && p.X < end : x > p.Left && x < p.Right))
-            {
-                row++;
-            }
-
-            if (row < MostRows)
-            {
-                placed.Add((row, x, start, end));
-                rows = Math.Max(rows, row + 1);
-            }
-
-            bool toTheLeft = start + length == x;
-            marks.Add((new SvgMark(x, Top + 10 + (Row * row), row < MostRows ? words : "", toTheLeft ? x - 6 : start + 6, toTheLeft ? "end" : "start", isAtom), row));
-        }
-
-        double top = Top + (Row * rows);
-        Top = top;
-        return [.. marks.Select(m => m.Row < MostRows ? m.Mark : m.Mark with { Y = top + 10 })];
-    }
 }
-
-/// <summary>A vertical line with a label.</summary>
-internal sealed record SvgMark(double X, double Y, string Label, double LabelX, string Anchor, bool IsAtom);

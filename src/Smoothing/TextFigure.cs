@@ -41,7 +41,7 @@ internal static class TextFigure
 
         if (figure.Second.Count > 0)
         {
-            lines.Add(Guard.Text($"    █ {figure.CurveWords}   o {SvgLayout.Short(figure.SecondWords, 30)}{(figure.Different.Count > 0 ? "   + more now, - fewer now: beyond chance" : "")}"));
+            lines.Add(Guard.Text($"    █ {figure.CurveWords}   o {SvgText.Fit(figure.SecondWords, 250)}{(figure.Different.Count > 0 ? "   + more now, - fewer now: beyond chance" : "")}"));
         }
 
         return lines;

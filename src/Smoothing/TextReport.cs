@@ -12,12 +12,8 @@ internal static class TextReport
     public static string Write(ReportModel report)
     {
         var text = new StringBuilder();
-        foreach (string line in Wrap(report.Title, Width))
-        {
-            text.Append(line).Append('\n');
-        }
-
-        text.Append(new string('=', Math.Min(Width, Length(report.Title)))).Append("\n\n");
+        Heading(text, report.Title, '=');
+        text.Append('\n');
         if (report.Figure is not null)
         {
             Picture(text, report.Figure);
@@ -25,7 +21,8 @@ internal static class TextReport
 
         foreach (ReportSection section in report.Sections)
         {
-            text.Append('\n').Append(section.Heading).Append('\n').Append(new string('-', Math.Min(Width, Length(section.Heading)))).Append('\n');
+            text.Append('\n');
+            Heading(text, section.Heading, '-');
             foreach (ReportBlock block in section.Blocks)
             {
                 if (block is ReportBlock.Table table)
@@ -46,9 +43,21 @@ internal static class TextReport
             }
         }
 
-        text.Append("\nMethod\n------\n");
+        text.Append('\n');
+        Heading(text, "Method", '-');
         Paragraph(text, report.Method, "");
         return text.ToString();
+    }
+
+    private static void Heading(StringBuilder text, string heading, char under)
+    {
+        List<string> lines = Wrap(heading, Width);
+        foreach (string line in lines)
+        {
+            text.Append(line).Append('\n');
+        }
+
+        text.Append(under, lines.Max(Length)).Append('\n');
     }
 
     private static void Picture(StringBuilder text, FigureModel figure)

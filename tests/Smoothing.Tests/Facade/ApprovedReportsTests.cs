@@ -46,7 +46,7 @@ public class ApprovedReportsTests
         {
             string path = Path.Combine(Repository.Root, "tests", "Smoothing.Tests", "Facade", "Approved", name + "." + kind);
             string now = text.Replace("Smoothing " + StudyMethod.Version, "Smoothing VERSION", StringComparison.Ordinal).Replace("\"library\": \"" + StudyMethod.Version, "\"library\": \"VERSION", StringComparison.Ordinal);
-            if (Environment.GetEnvironmentVariable("SMOOTHING_UPDATE_DOCS") == "1")
+            if (Environment.GetEnvironmentVariable("SMOOTHING_UPDATE_DOCS") == "1" && !(kind == "json" && Agrees(path, now)))
             {
                 Directory.CreateDirectory(Path.GetDirectoryName(path)!);
                 File.WriteAllText(path, now);
@@ -97,6 +97,22 @@ public class ApprovedReportsTests
         using JsonDocument first = JsonDocument.Parse(approved);
         using JsonDocument second = JsonDocument.Parse(actual);
         Assert.ThrowsAny<Xunit.Sdk.XunitException>(() => Same(first.RootElement, second.RootElement, "$", 0));
+    }
+
+    // Last digits differ from machine to machine: a file that agrees is left as it is.
+    private static bool Agrees(string path, string now)
+    {
+        try
+        {
+            using JsonDocument approved = JsonDocument.Parse(File.ReadAllText(path));
+            using JsonDocument actual = JsonDocument.Parse(now);
+            Same(approved.RootElement, actual.RootElement, "$", 0);
+            return true;
+        }
+        catch (Exception error) when (error is Xunit.Sdk.XunitException or IOException or JsonException)
+        {
+            return false;
+        }
     }
 
     // Numbers against the largest of their list: what cancels to nothing has no digits of its own.
