@@ -10,6 +10,7 @@ namespace Smoothing.Tests.Facade;
 /// Whole reports on fixed seeds against files that somebody has read: text, Markdown and HTML sign by sign, numbers of the JSON to 1e-10, since wider vectors may
 /// round differently. SMOOTHING_UPDATE_DOCS=1 rewrites the files; read the difference before committing it.
 /// </summary>
+[Trait("Category", "Widths")]
 public class ApprovedReportsTests
 {
     private const double Tolerance = 1e-10;
