@@ -1,5 +1,6 @@
 using Smoothing.Bandwidths;
 using Smoothing.Kernels;
+using Smoothing.Numerics;
 using Smoothing.Samples;
 using Smoothing.Tests.Support;
 
@@ -54,6 +55,21 @@ public class BandwidthPropertyTests
         double h = BandwidthRules.Choose(rule, Sample.Of(x, new SampleOptions { Weights = weights }), Kernel.Gaussian);
         double scaled = BandwidthRules.Choose(rule, Sample.Of(x, new SampleOptions { Weights = weights.Select(w => 1000 * w).ToArray() }), Kernel.Gaussian);
         Near.Relative(h, scaled, 1e-6, rule.ToString());
+    }
+
+    [Theory]
+    [MemberData(nameof(Rules))]
+    public void Choose_DeclaredLimit_MirrorsAndAgreesOnCells(BandwidthRule rule)
+    {
+        double[] x = [.. BadInputTests.Normal(600, 21).Select(Math.Abs)];
+        double[] weights = [.. x.Select((_, i) => 0.5 + (i % 3))];
+        var lower = new BandwidthOptions { Support = new Interval(0, double.PositiveInfinity) };
+        var upper = new BandwidthOptions { Support = new Interval(double.NegativeInfinity, 0) };
+        double h = BandwidthRules.Choose(rule, Sample.Of(x, new SampleOptions { Weights = weights }), Kernel.Gaussian, lower);
+        double mirrored = BandwidthRules.Choose(rule, Sample.Of([.. x.Select(v => -v)], new SampleOptions { Weights = weights }), Kernel.Gaussian, upper);
+        Near.Relative(h, mirrored, 1e-6, rule.ToString());
+        double cells = BandwidthRules.Choose(rule, CondensedSample.Of(x, new CondensingOptions { CellWidth = 1.0 / 1024, Weights = weights }), Kernel.Gaussian, lower);
+        Near.Relative(h, cells, 0.02, rule.ToString());
     }
 
     [Fact]
