@@ -65,7 +65,7 @@ public class PublishedValuesTests
         {
             1 => -35.0 / 16 / 9 * (x / 3) * 3 * Math.Pow(1 - (x * x / 9), 2),
             2 => 35.0 / 16 * 3 / 27 * ((4 * x * x / 9 * (1 - (x * x / 9))) - Math.Pow(1 - (x * x / 9), 2)),
-            _ => throw new NotSupportedException(),
+            _ => throw new ArgumentOutOfRangeException(nameof(order), order, "only the first two derivatives are asked for"),
         };
         TargetDensity target = TargetDensity.FromFunction("triweight on ±3", Triweight, new(-3, 3), Derivative);
         Near.Relative(35.0 / 243, target.Roughness(2), 1e-11);

@@ -66,7 +66,7 @@ public class TargetInputTests
         TargetDensity bare = TargetDensity.FromFunction("bare", NormalMixture.Normal().Value, Interval.WholeLine);
         Assert.Contains("Derivative 2 of bare is not known", Assert.Throws<InvalidOperationException>(() => bare.Derivative(0, 2)).Message, StringComparison.Ordinal);
         Assert.Contains("Derivative 2 of bare", Assert.Throws<InvalidOperationException>(() => new ErrorTheory(Kernel.Gaussian, bare).Amise(0.3, 100)).Message, StringComparison.Ordinal);
-        TargetDensity partial = TargetDensity.FromFunction("partial", NormalMixture.Normal().Value, Interval.WholeLine, (x, r) => r == 1 ? NormalMixture.Normal().Derivative(x) : throw new NotSupportedException());
+        TargetDensity partial = TargetDensity.FromFunction("partial", NormalMixture.Normal().Value, Interval.WholeLine, (x, r) => r == 1 ? NormalMixture.Normal().Derivative(x) : throw new NotSupportedException("a caller's function that knows the first derivative only"));
         Assert.Contains("Derivative 2 of partial", Assert.Throws<InvalidOperationException>(() => new ErrorTheory(Kernel.Gaussian, partial).AsymptoticBias(0, 0.3)).Message, StringComparison.Ordinal);
 
         var exact = new ErrorTheory(Kernel.Epanechnikov, NormalMixture.Normal());
