@@ -14,8 +14,11 @@ internal static class TargetTable
 
     public static int Run(string[] args)
     {
+        bool write = args.Length > 0 && args[0] == "write";
+        args = write ? args[1..] : args;
         int rounds = args.Length > 0 ? int.Parse(args[0], CultureInfo.InvariantCulture) : 11;
         string[] only = args.Length > 1 ? args[1].Split(',') : [];
+        var rows = new List<string>();
         Console.WriteLine(FormattableString.Invariant($"{"target",-7} {"limit",9} {"reached",9} {"wall",9} {"job ms",9} {"base ms",9}  measurement"));
         foreach (Func<Target> make in (IEnumerable<Func<Target>>)[.. GaussianTargets.All, .. PairTargets.All, .. CompactTargets.All])
         {
@@ -26,9 +29,16 @@ internal static class TargetTable
             }
 
             Median median = Measure(target, rounds);
-            string verdict = median.Ratio <= target.Limit ? "" : "  MISSED";
+            string verdict = median.Ratio <= target.Limit ? "" : "MISSED";
             Console.WriteLine(FormattableString.Invariant(
-                $"{target.Id,-7} {target.Limit,9:G3} {median.Ratio,9:G3} {median.WallRatio,9:G3} {median.Job,9:F3} {median.Yardstick,9:F3}  {target.Measurement}{verdict}"));
+                $"{target.Id,-7} {target.Limit,9:G3} {median.Ratio,9:G3} {median.WallRatio,9:G3} {median.Job,9:F3} {median.Yardstick,9:F3}  {target.Measurement}  {verdict}"));
+            rows.Add(FormattableString.Invariant(
+                $"| {target.Id} | {target.Measurement} | {target.Limit:G3} | {median.Ratio:G3} | {median.WallRatio:G3} | {median.Job:F2} | {median.Yardstick:F2} | {(verdict.Length == 0 ? "met" : "missed")} |"));
+        }
+
+        if (write)
+        {
+            TargetPage.Write(rows, rounds);
         }
 
         return 0;

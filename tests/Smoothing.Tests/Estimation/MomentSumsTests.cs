@@ -314,6 +314,24 @@ public class MomentSumsTests
     }
 
     [Fact]
+    public void Derivatives_ManyPoints_UsePolynomialsAndFewDoNot()
+    {
+        MomentSums sums = Make(HardSamples.Make("normal", Count), [], Kernel.Gaussian, 0.3);
+        var field = Assert.IsType<DenseField>(sums.Field);
+        double[] x = [.. Enumerable.Range(0, 20_000).Select(j => -4 + (0.0004 * j))], destination = new double[x.Length];
+        sums.Derivatives(x.AsSpan(0, 500), 0, destination);
+        Assert.False(field.HasPanels(0));
+        sums.Derivatives(x, 0, destination);
+        Assert.True(field.HasPanels(0));
+        Assert.False(field.HasPanels(1));
+        Assert.Same(field, sums.Field);
+    }
+
+    [Fact]
+    public void Field_LongRange_KeepsOccupiedCellsOnly() =>
+        Assert.IsType<SparseField>(Make(HardSamples.Make("heavy", Count), [], Kernel.Gaussian, 0.01).Field);
+
+    [Fact]
     public void For_GaussianAndManyValues_ChoosesTheMoments()
     {
         Sample sample = Sample.Of(HardSamples.Make("normal", Count));

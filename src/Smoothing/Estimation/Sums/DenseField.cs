@@ -83,6 +83,9 @@ internal sealed unsafe class DenseField : MomentField
 
     private int KnownMomentCount { get; }
 
+    /// <summary>Whether so many points at once were asked for that the curve of that derivative has been turned into polynomials.</summary>
+    public bool HasPanels(int order) => Volatile.Read(ref _panels[order]) is not null;
+
     public override void Derivatives(ReadOnlySpan<double> x, int order, double[] parts, double factor, Span<double> destination)
     {
         MomentPanels? panels = Panels(x.Length, order, parts);

@@ -42,6 +42,9 @@ internal sealed unsafe class MomentSums : KernelSums
 
     public override string Method => "GaussianMoments";
 
+    /// <summary>Cells and tables, made on first need.</summary>
+    public MomentField Field => _field.Value;
+
     public static bool Serves(Sample sample, Kernel kernel, double bandwidth) =>
         sample.Count >= FewestValues && GaussianDirectSums.Serves(kernel, bandwidth) && MomentCells.CanIndex(bandwidth, Math.Max(-sample.Minimum, sample.Maximum));
 
