@@ -17,8 +17,8 @@ public sealed partial class DensityStudy
     private readonly Lazy<SmoothingVariant?> _double;
     private readonly Lazy<SharpEstimate?> _sharp;
 
-    /// <summary>What the values say about the number of groups, and intervals for each peak of the curve; null where bandwidths lie beyond 10^±60. Drawn with <see cref="StudyOptions.Seed"/>.</summary>
-    /// <remarks>About 500 resamples a test; its cost stops growing at ten thousand values.</remarks>
+    /// <summary>What the values say about the number of groups, and intervals for each peak of the curve; null where bandwidths lie beyond 10^±60.</summary>
+    /// <remarks>Tests at the level 1 − <see cref="StudyOptions.Level"/> (kept within 0.001 to 0.5), 500 resamples each, drawn with <see cref="StudyOptions.Seed"/>. The cost stops growing at ten thousand values.</remarks>
     public GroupEvidence? Groups => _groups.Value;
 
     /// <summary>The values that the studied ones are compared with; null without a reference.</summary>
@@ -55,7 +55,7 @@ public sealed partial class DensityStudy
 
         GroupEvidence evidence = Inference.Groups.Of(CurveSample, Options.Seed, new GroupOptions
         {
-            Significance = Math.Clamp(1 - Options.Level, 0.001, 0.5),
+            Significance = Math.Clamp(Math.Round(1 - Options.Level, 12), 0.001, 0.5),
             Level = Options.Level,
             Bandwidth = Options.Kernel.Order == 2 ? Bandwidth.EquivalentFor(Kernel.Gaussian) : null,
             Support = Options.Support,

@@ -22,14 +22,6 @@ internal static class HtmlReport
         return html.Append("</main>\n</body>\n</html>\n").ToString();
     }
 
-    /// <summary>The report without the page around it, for pages that hold several.</summary>
-    public static string Fragment(ReportModel report)
-    {
-        var html = new StringBuilder();
-        Body(html, report);
-        return html.ToString();
-    }
-
     private static void Body(StringBuilder html, ReportModel report)
     {
         html.Append("<h1>").Append(Text(report.Title)).Append("</h1>\n");

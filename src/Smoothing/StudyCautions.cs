@@ -22,8 +22,11 @@ internal static class StudyCautions
         Sample sample = study.Sample;
         if (sample.LeftOut > 0)
         {
-            double share = (double)sample.LeftOut / (sample.LeftOut + sample.Count);
-            cautions.Add(new(CautionKind.LeftOut, Guard.Text($"{StudyNumbers.Count(sample.LeftOut)} missing values ({100 * share:F1} %) were left out: if they are missing because of their size, every number here is off. Find out why they are missing.")));
+            double percent = 100.0 * sample.LeftOut / (sample.LeftOut + sample.Count);
+            string share = percent < 0.1 ? "less than 0.1" : Guard.Text($"{percent:F1}");
+            string left = sample.LeftOut == 1 ? Guard.Text($"One missing value ({share} %) was left out: if it is missing because of its size,")
+                : Guard.Text($"{StudyNumbers.Count(sample.LeftOut)} missing values ({share} %) were left out: if they are missing because of their size,");
+            cautions.Add(new(CautionKind.LeftOut, left + " every number here is off. Find out why."));
         }
 
         if (sample.EffectiveCount < Few)

@@ -19,20 +19,14 @@ internal static class StudyNumbers
     /// <summary>The two ends of an interval to the place of the second digit of the error; infinite ends as words.</summary>
     public static string Range(Interval interval, double error, string unit = "")
     {
-        if (!(error > 0))
-        {
-            error = Math.Max(Magnitude(interval.Lower), Magnitude(interval.Upper)) * 1e-11;
-        }
-
         int decimals = Decimals(error, Math.Max(Magnitude(interval.Lower), Magnitude(interval.Upper)));
+        string End(double value) => error > 0 ? Fixed(value, decimals) : AsGiven(value);
         if (double.IsInfinity(interval.Upper))
         {
-            return double.IsInfinity(interval.Lower) ? "cannot be said" : "at least " + WithUnit(Fixed(interval.Lower, decimals), unit);
+            return double.IsInfinity(interval.Lower) ? "cannot be said" : "at least " + WithUnit(End(interval.Lower), unit);
         }
 
-        return double.IsInfinity(interval.Lower)
-            ? "at most " + WithUnit(Fixed(interval.Upper, decimals), unit)
-            : Fixed(interval.Lower, decimals) + " to " + WithUnit(Fixed(interval.Upper, decimals), unit);
+        return double.IsInfinity(interval.Lower) ? "at most " + WithUnit(End(interval.Upper), unit) : End(interval.Lower) + " to " + WithUnit(End(interval.Upper), unit);
     }
 
     /// <summary>The ends of an interval for a change, each with its sign.</summary>

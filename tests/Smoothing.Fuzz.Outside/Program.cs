@@ -118,7 +118,7 @@ static void WriteCorpus(string folder)
         File.WriteAllBytes(Path.Combine(folder, "cells", $"start-{i}.bin"), cells[i]);
     }
 
-    StudyOptions[] asked = [new() { Points = 51, Bandwidth = 1, Limits = [3] }, new() { Points = 51, Name = "level", Unit = "mm", Probabilities = [0.5] }];
+    StudyOptions[] asked = [new() { Points = 51, Bandwidth = 1, Limits = [3] }, new() { Points = 51, Name = "level", Unit = "mm", Probabilities = [0.5], ReferenceValues = new double[] { 1, 3, 4, 6 } }];
     for (int i = 0; i < asked.Length; i++)
     {
         File.WriteAllText(Path.Combine(folder, "json", $"start-{i}.json"), DensityStudy.Of([1.0, 2, 2.5, 4, 7, 7.5, 9], asked[i]).ToJson());

@@ -37,7 +37,7 @@ ComparisonResult comparison = Comparison.Of(Sample.Of(values[..1_000]), Sample.O
 Print("groups", groups.AtLeast, groups.Dip, groups.DipPValue);
 Print("comparison", comparison.PValue);
 
-DensityStudy study = DensityStudy.Of(values, new StudyOptions { Name = "level", Unit = "mm", Limits = [1.5] });
+DensityStudy study = DensityStudy.Of(values, new StudyOptions { Name = "level", Unit = "mm", Limits = [1.5], ReferenceValues = values.AsMemory(0, values.Length / 3), ReferenceName = "the first third" });
 Print("band", study.Band!.Lower[200], study.Band.Upper[200], study.Band.CriticalValue);
 Text("text", study.ToText());
 Text("markdown", study.ToMarkdown());

@@ -30,13 +30,13 @@ public class DensityStudyTests
     public void Of_SameInput_GivesTheSameBytesInAnyCulture()
     {
         CultureInfo before = CultureInfo.CurrentCulture;
-        string invariant = Everything(DensityStudy.Of(s_waiting, new StudyOptions { Unit = "min", Limits = [60.5] }));
+        string invariant = Everything(DensityStudy.Of(s_waiting, new StudyOptions { Unit = "min", Limits = [60.5], ReferenceValues = s_waiting.AsMemory(0, 100) }));
         try
         {
             foreach (string name in new[] { "de-DE", "ar-SA", "tr-TR" })
             {
                 CultureInfo.CurrentCulture = new CultureInfo(name);
-                Assert.Equal(invariant, Everything(DensityStudy.Of(s_waiting, new StudyOptions { Unit = "min", Limits = [60.5] })));
+                Assert.Equal(invariant, Everything(DensityStudy.Of(s_waiting, new StudyOptions { Unit = "min", Limits = [60.5], ReferenceValues = s_waiting.AsMemory(0, 100) })));
             }
         }
         finally

@@ -177,6 +177,35 @@ public class StudyPartsTests
     }
 
     [Fact]
+    public void FromJson_ComparisonListsOfUnequalLength_AreAnArgumentError()
+    {
+        string json = DensityStudy.Of(s_eruptions, new StudyOptions { ReferenceValues = s_eruptions.AsMemory(0, 100), Points = 51 }).ToJson();
+        var node = System.Text.Json.Nodes.JsonNode.Parse(json)!;
+        node["comparison"]!["lower"]!.AsArray().RemoveAt(0);
+        Assert.Contains("comparison.lower", Assert.Throws<ArgumentException>(() => StudyDocument.FromJson(node.ToJsonString())).Message, StringComparison.Ordinal);
+        node["comparison"]!["x"] = null;
+        Assert.Throws<ArgumentException>(() => StudyDocument.FromJson(node.ToJsonString()));
+        node["comparison"] = null;
+        node["groups"]!["peaks"] = null;
+        Assert.Contains("groups", Assert.Throws<ArgumentException>(() => StudyDocument.FromJson(node.ToJsonString())).Message, StringComparison.Ordinal);
+    }
+
+    // Members were added after the first documents were written: those still read.
+    [Fact]
+    public void FromJson_WithoutTheLaterMembers_StillReads()
+    {
+        var node = System.Text.Json.Nodes.JsonNode.Parse(DensityStudy.Of(s_eruptions, new StudyOptions { Points = 51 }).ToJson())!.AsObject();
+        foreach (string member in new[] { "groups", "comparison", "atHalf", "atDouble", "plan" })
+        {
+            Assert.True(node.Remove(member), member);
+        }
+
+        StudyDocument document = StudyDocument.FromJson(node.ToJsonString());
+        Assert.Null(document.Groups);
+        Assert.Equal(272, document.Data.Count);
+    }
+
+    [Fact]
     public void Seed_Another_ChangesOnlyWhatIsDrawn()
     {
         string Text(ulong seed) => DensityStudy.Of(s_eruptions, new StudyOptions { Seed = seed }).ToJson();
