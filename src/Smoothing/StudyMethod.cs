@@ -56,11 +56,11 @@ internal static class StudyMethod
             return "given by the analyst";
         }
 
-        string name = choice.Rule == BandwidthRule.Automatic ? Automatic(choice) : Name(choice.Rule);
+        string name = choice.Rule == BandwidthRule.Automatic ? Automatic(choice) : BandwidthRules.NameOf(choice.Rule);
         return choice.Status switch
         {
-            BandwidthStatus.Replaced when choice is { Rule: not BandwidthRule.Automatic, ReplacedBy: { } other } => Guard.Text($"{name} found nothing; {Name(other)} in its place"),
-            BandwidthStatus.RoundingFloor => Guard.Text($"{Name(choice.Rule)}, kept from falling below what the rounding of the data allows"),
+            BandwidthStatus.Replaced when choice is { Rule: not BandwidthRule.Automatic, ReplacedBy: { } other } => Guard.Text($"{name} found nothing; {BandwidthRules.NameOf(other)} in its place"),
+            BandwidthStatus.RoundingFloor => Guard.Text($"{BandwidthRules.NameOf(choice.Rule)}, kept from falling below what the rounding of the data allows"),
             BandwidthStatus.EndOfSearch => Guard.Text($"{name}, at the end of its search"),
             _ => name,
         };
@@ -76,27 +76,12 @@ internal static class StudyMethod
 
         if (choice.Status == BandwidthStatus.Replaced)
         {
-            return "automatic: " + (taken == BandwidthRule.NormalReference ? "normal reference, as nothing else was found" : Name(taken) + " alone, as the other rule found nothing");
+            return "automatic: " + (taken == BandwidthRule.NormalReference ? "normal reference, as nothing else was found" : BandwidthRules.NameOf(taken) + " alone, as the other rule found nothing");
         }
 
-        string[] others = [.. choice.Candidates.Keys.Where(k => k != taken).Select(Name)];
-        return "automatic: " + Name(taken) + (others.Length > 0 ? ", the smaller of it and " + others[0] : "");
+        string[] others = [.. choice.Candidates.Keys.Where(k => k != taken).Select(BandwidthRules.NameOf)];
+        return "automatic: " + BandwidthRules.NameOf(taken) + (others.Length > 0 ? ", the smaller of it and " + others[0] : "");
     }
-
-    private static string Name(BandwidthRule rule) => rule switch
-    {
-        BandwidthRule.Automatic => "automatic",
-        BandwidthRule.NormalReference => "normal reference",
-        BandwidthRule.Oversmoothed => "oversmoothed",
-        BandwidthRule.SheatherJones => "Sheather–Jones",
-        BandwidthRule.DirectPlugIn => "direct plug-in",
-        BandwidthRule.DiffusionFixedPoint => "diffusion fixed point",
-        BandwidthRule.LeastSquaresCrossValidation => "least-squares cross-validation",
-        BandwidthRule.BiasedCrossValidation => "biased cross-validation",
-        BandwidthRule.OneSidedCrossValidation => "one-sided cross-validation",
-        BandwidthRule.LikelihoodCrossValidation => "likelihood cross-validation",
-        _ => "block spectrum",
-    };
 
     private static string Correction(BoundaryCorrection correction) => correction switch
     {

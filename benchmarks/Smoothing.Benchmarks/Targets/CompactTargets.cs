@@ -17,9 +17,9 @@ internal static class CompactTargets
 
     private static Func<Target> Grid(Kernel kernel, string id, double limit) => () =>
     {
-        double[] values = Normal(Million, 1);
+        double[] values = GaussianTargets.Normal(Million, 1);
         double[] work = new double[Million];
-        double[] x = Equal(-5, 5, 1024);
+        double[] x = GaussianTargets.Equal(-5, 5, 1024);
         double[] y = new double[x.Length];
         double width = ReferenceFactor * Math.Pow(Million, -0.2);
         return new Target(
@@ -33,7 +33,7 @@ internal static class CompactTargets
 
     private static Target LeaveOneOut()
     {
-        double[] values = Normal(Million, 1);
+        double[] values = GaussianTargets.Normal(Million, 1);
         double[] work = new double[Million];
         double[] y = new double[Million];
         Sample sample = Sample.Of(values);
@@ -52,7 +52,7 @@ internal static class CompactTargets
     private static Target ManyPoints()
     {
         const int points = 100_000;
-        double[] values = Normal(Million, 1);
+        double[] values = GaussianTargets.Normal(Million, 1);
         double[] work = new double[Million];
         var random = new RandomStream(3);
         var x = new double[points];
@@ -74,7 +74,7 @@ internal static class CompactTargets
 
     private static Target CrossValidation()
     {
-        double[] values = Normal(Million, 1);
+        double[] values = GaussianTargets.Normal(Million, 1);
         double[] work = new double[Million];
         double middle = ReferenceFactor * Math.Pow(Million, -0.2);
         return new Target(
@@ -96,8 +96,8 @@ internal static class CompactTargets
     private static Target SmallGaussian()
     {
         const int repeats = 20; // one run is a tenth of a millisecond
-        double[] values = Normal(1000, 2);
-        double[] x = Equal(-4, 4, 512);
+        double[] values = GaussianTargets.Normal(1000, 2);
+        double[] x = GaussianTargets.Equal(-4, 4, 512);
         double[] y = new double[x.Length];
         double width = 1.06 * Math.Pow(1000, -0.2);
         return new Target(
@@ -130,28 +130,5 @@ internal static class CompactTargets
 
             y[j] = sum;
         }
-    }
-
-    private static double[] Normal(int count, ulong seed)
-    {
-        var random = new RandomStream(seed);
-        var values = new double[count];
-        for (int i = 0; i < count; i++)
-        {
-            values[i] = random.NextNormal();
-        }
-
-        return values;
-    }
-
-    private static double[] Equal(double from, double to, int points)
-    {
-        var x = new double[points];
-        for (int j = 0; j < points; j++)
-        {
-            x[j] = from + ((to - from) * j / (points - 1));
-        }
-
-        return x;
     }
 }

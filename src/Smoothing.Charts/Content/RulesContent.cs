@@ -27,11 +27,11 @@ internal static class RulesContent
             try
             {
                 BandwidthChoice choice = BandwidthRules.Choose(rule, study.CurveSample, study.Options.Kernel, new BandwidthOptions { Support = study.Options.Support });
-                rows.Add(new Row(Words.Sentence(Words.Rule(rule)), choice, Sign(choice), false));
+                rows.Add(new Row(Words.Sentence(BandwidthRules.NameOf(rule)), choice, Sign(choice), false));
             }
             catch (ArgumentException)
             {
-                silent.Add(Words.Rule(rule));
+                silent.Add(BandwidthRules.NameOf(rule));
             }
         }
 

@@ -40,23 +40,8 @@ internal static class Words
 
     public static string Level(double level) => AsGiven(Math.Round(100 * level, 8)) + " %";
 
-    public static string Rule(BandwidthRule rule) => rule switch
-    {
-        BandwidthRule.Automatic => "automatic",
-        BandwidthRule.NormalReference => "normal reference",
-        BandwidthRule.Oversmoothed => "oversmoothed",
-        BandwidthRule.SheatherJones => "Sheather–Jones",
-        BandwidthRule.DirectPlugIn => "direct plug-in",
-        BandwidthRule.DiffusionFixedPoint => "diffusion fixed point",
-        BandwidthRule.LeastSquaresCrossValidation => "least-squares cross-validation",
-        BandwidthRule.BiasedCrossValidation => "biased cross-validation",
-        BandwidthRule.OneSidedCrossValidation => "one-sided cross-validation",
-        BandwidthRule.LikelihoodCrossValidation => "likelihood cross-validation",
-        _ => "block spectrum",
-    };
-
     /// <summary>How the bandwidth of a study came about.</summary>
-    public static string Rule(BandwidthChoice choice) => choice.Status == BandwidthStatus.Given ? "given" : Rule(choice.Rule) + " rule";
+    public static string Rule(BandwidthChoice choice) => choice.Status == BandwidthStatus.Given ? "given" : BandwidthRules.NameOf(choice.Rule) + " rule";
 
     /// <summary>First letter in upper case.</summary>
     public static string Sentence(string words) => words.Length == 0 ? words : char.ToUpperInvariant(words[0]) + words[1..];

@@ -1,4 +1,5 @@
 using Smoothing.Kernels;
+using Smoothing.Numerics;
 using Smoothing.Samples;
 
 namespace Smoothing.Bandwidths;
@@ -141,4 +142,24 @@ public static partial class BandwidthRules
     /// <remarks>Source: Polansky &amp; Baker (2000). The gain over the step function is 5 to 20 % of its integrated squared error.</remarks>
     public static BandwidthChoice ForDistribution(Sample sample, Kernel kernel, BandwidthOptions? options = null) =>
         RuleDispatch.ForDistribution(SelectionInput.Of(sample, options), kernel);
+
+    /// <summary>A rule's usual name, for reports and figures.</summary>
+    /// <param name="rule">One of the named rules.</param>
+    /// <returns>Lower case but for persons' names, such as "Sheather–Jones" or "direct plug-in".</returns>
+    /// <exception cref="ArgumentOutOfRangeException"><paramref name="rule"/> is none of them.</exception>
+    public static string NameOf(BandwidthRule rule) => rule switch
+    {
+        BandwidthRule.Automatic => "automatic",
+        BandwidthRule.NormalReference => "normal reference",
+        BandwidthRule.Oversmoothed => "oversmoothed",
+        BandwidthRule.SheatherJones => "Sheather–Jones",
+        BandwidthRule.DirectPlugIn => "direct plug-in",
+        BandwidthRule.DiffusionFixedPoint => "diffusion fixed point",
+        BandwidthRule.LeastSquaresCrossValidation => "least-squares cross-validation",
+        BandwidthRule.BiasedCrossValidation => "biased cross-validation",
+        BandwidthRule.OneSidedCrossValidation => "one-sided cross-validation",
+        BandwidthRule.LikelihoodCrossValidation => "likelihood cross-validation",
+        BandwidthRule.BlockSpectrum => "block spectrum",
+        _ => throw new ArgumentOutOfRangeException(nameof(rule), Guard.Text($"rule must be one of the named rules, but is {rule}.")),
+    };
 }

@@ -58,6 +58,14 @@ public class BadInputTests
     }
 
     [Fact]
+    public void NameOf_EveryRule_IsANameOfItsOwn()
+    {
+        string[] names = [.. Enum.GetValues<BandwidthRule>().Select(BandwidthRules.NameOf)];
+        Assert.Equal(names.Length, names.Distinct().Count());
+        Assert.Throws<ArgumentOutOfRangeException>(() => BandwidthRules.NameOf((BandwidthRule)99));
+    }
+
+    [Fact]
     public void Choose_BadOptions_AreNamed()
     {
         Sample sample = Sample.Of([1.0, 2.0, 3.0]);
