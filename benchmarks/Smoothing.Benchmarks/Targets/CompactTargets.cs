@@ -5,7 +5,7 @@ using Smoothing.Samples;
 
 namespace Smoothing.Benchmarks.Targets;
 
-/// <summary>Targets of polynomial kernels and of few values: T7, T8, T9, T12, T17, T18.</summary>
+/// <summary>Targets of polynomial kernels and of few values: T7, T8, T9, T12, T17.</summary>
 internal static class CompactTargets
 {
     private const int Million = 1_000_000;
@@ -13,7 +13,7 @@ internal static class CompactTargets
     // The Epanechnikov reference bandwidth for standard normal values: (8·3·√π·0.6/(3·0.04))^(1/5) n^(−1/5) = 2.34 n^(−1/5).
     private const double ReferenceFactor = 2.34;
 
-    public static IReadOnlyList<Func<Target>> All { get; } = [Grid(Kernel.Epanechnikov, "T7", 0.09), Grid(Kernel.Triweight, "T8", 0.18), LeaveOneOut, SmallGaussian, ManyPoints, CrossValidation];
+    public static IReadOnlyList<Func<Target>> All { get; } = [Grid(Kernel.Epanechnikov, "T7", 0.09), Grid(Kernel.Triweight, "T8", 0.18), LeaveOneOut, SmallGaussian, ManyPoints];
 
     private static Func<Target> Grid(Kernel kernel, string id, double limit) => () =>
     {
@@ -70,27 +70,6 @@ internal static class CompactTargets
             () => values.CopyTo(work, 0),
             () => work.AsSpan().Sort(),
             () => Density.Of(Sample.Of(values), Kernel.Epanechnikov, width).Values(x, y));
-    }
-
-    private static Target CrossValidation()
-    {
-        double[] values = GaussianTargets.Normal(Million, 1);
-        double[] work = new double[Million];
-        double middle = ReferenceFactor * Math.Pow(Million, -0.2);
-        return new Target(
-            "T18",
-            "Epanechnikov cross-validation at 50 bandwidths, every one exact, n = 10^6 / Span.Sort",
-            0.12,
-            () => values.CopyTo(work, 0),
-            () => work.AsSpan().Sort(),
-            () =>
-            {
-                var pairs = new CompactPairs(Sample.Of(values), Kernel.Epanechnikov);
-                for (int k = 0; k < 50; k++)
-                {
-                    _ = pairs.LeastSquares(middle / 4 * Math.Pow(16, k / 49.0)); // a factor of four to either side
-                }
-            });
     }
 
     private static Target SmallGaussian()

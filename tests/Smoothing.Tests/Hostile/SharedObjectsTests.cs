@@ -62,7 +62,7 @@ public class SharedObjectsTests
     {
         string[] cultures = ["", "de-DE", "ar-SA", "tr-TR", "fa-IR", "hi-IN", "fr-CH", "th-TH"];
         DensityStudy Make() => DensityStudy.Of(s_values, new StudyOptions { Name = "level", Unit = "mm", Limits = [1.5], ReferenceValues = s_values.AsMemory(0, 1_000), ReferenceName = "before" });
-        static string All(DensityStudy study) => study.ToText() + study.ToMarkdown() + study.ToHtml() + study.ToJson() + study.ToSvg() + study.ToComparisonSvg() + study.Sharp!.Value(0.5);
+        static string All(DensityStudy study) => study.ToText() + study.ToMarkdown() + study.ToHtml() + study.ToJson() + study.ToSvg() + study.ToComparisonSvg() + FormattableString.Invariant($"{study.Sharp!.Value(0.5):R}");
         string expected = All(Make());
         DensityStudy shared = Make();
         string[] got = OnThreads(ThreadCount, i =>
